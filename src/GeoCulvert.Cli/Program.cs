@@ -1,0 +1,2 @@
+Console.Error.WriteLine("geoculvert");
+return 1;
