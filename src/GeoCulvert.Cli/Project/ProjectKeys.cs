@@ -1,0 +1,108 @@
+namespace GeoCulvert.Cli.Project;
+
+/// <summary>Every key a project file may hold, in the order of the template.</summary>
+internal static class ProjectKeys
+{
+    /// <summary>Tables and what they are about; <c>road</c> may repeat.</summary>
+    public static readonly IReadOnlyList<(string Name, string About)> Tables =
+    [
+        ("study", "the study and how results are written"),
+        ("terrain", "the terrain model"),
+        ("road", "a road alignment; repeat the table for more roads"),
+        ("crossings", "where water crosses the road: found along the roads, or given as points"),
+        ("cover", "land cover and soil groups for the runoff coefficient"),
+        ("rainfall", "rainfall intensity by duration and return period"),
+        ("flow", "design flow"),
+        ("culvert", "what may be built"),
+        ("criteria", "what a culvert must meet"),
+        ("tailwater", "water level at the outlet"),
+    ];
+
+    /// <summary>All keys.</summary>
+    public static readonly IReadOnlyList<ProjectKey> All =
+    [
+        new("study", "name", KeyKind.Text, null, "name printed on every sheet; default: the name of the project file"),
+        new("study", "units", KeyKind.Choice, "\"si\"", "system of units of the results, not of the inputs") { Words = ["si", "us"] },
+        new("study", "folder", KeyKind.Path, "\"results\"", "where results go"),
+
+        new("terrain", "dem", KeyKind.Paths, null, "terrain model: a file, a list of files, a folder of tiles or a VRT"),
+        new("terrain", "vertical_unit", KeyKind.Choice, null, "unit of the elevations; needed only when the file does not say") { Words = ["m", "ft", "us-ft"] },
+        new("terrain", "nodata", KeyKind.Number, null, "value that means 'no data'; needed only when the file does not say"),
+        new("terrain", "crs", KeyKind.Text, null, "coordinate system of the terrain model; needed only when the file does not say"),
+        new("terrain", "working_crs", KeyKind.Text, null, "projected coordinate system to work in; default: the terrain model's own, or the UTM zone of its middle"),
+        Length("terrain", "cell_size", null, "cell size after a geographic terrain model is projected; default: its own spacing", 0.01),
+        new("terrain", "stream_area", KeyKind.Quantity, "\"10 ha\"", "drainage area at which a stream begins") { Dimension = "area", Least = 1 },
+
+        new("road", "file", KeyKind.Path, null, "alignment, in any vector format"),
+        new("road", "layer", KeyKind.Text, null, "layer in the file; default: its first"),
+        new("road", "where", KeyKind.Text, null, "filter on the fields, as an SQL WHERE clause"),
+        new("road", "name", KeyKind.Text, null, "road name; default: the field of name_field, else the file's name"),
+        new("road", "name_field", KeyKind.Text, null, "field that holds the road name, when one file holds several roads"),
+        new("road", "class", KeyKind.Choice, "\"local\"", "picks design and check return periods and the smallest size (common practice; each can be set)") { Words = ["arterial", "collector", "local", "track"] },
+        Length("road", "width", "\"8 m\"", "shoulder to shoulder", 0.5),
+        new("road", "side_slope", KeyKind.Number, "2.0", "embankment side slope, horizontal per one vertical") { Least = 0, Most = 20 },
+        new("road", "surface", KeyKind.Choice, "\"paved\"", "road surface, for overtopping") { Words = ["paved", "gravel"] },
+        new("road", "profile", KeyKind.Path, null, "table station,elevation with units in its heading; default: the line's own z, else the terrain"),
+        new("road", "design_return_period", KeyKind.Number, null, "years; default: [flow] design_return_period, else by class") { Least = 1.0001, Most = 10000 },
+        new("road", "check_return_period", KeyKind.Number, null, "years; default: [flow] check_return_period, else by class") { Least = 1.0001, Most = 10000 },
+
+        new("crossings", "points", KeyKind.Path, null, "given crossings; without it crossings are found along the roads"),
+        new("crossings", "layer", KeyKind.Text, null, "layer in the file; default: its first"),
+        new("crossings", "where", KeyKind.Text, null, "filter on the fields"),
+        new("crossings", "id", KeyKind.Text, null, "field that holds the crossing id; default: numbered in the order of the file"),
+        Length("crossings", "snap", "\"60 m\"", "how far a given point may be moved to its stream", 0),
+        new("crossings", "overrides", KeyKind.Path, null, "table keyed by crossing_id that sets values of single crossings"),
+        new("crossings", "accept_edge_contact", KeyKind.Number, "0.0", "largest share of a watershed's boundary on the edge of the terrain for which a size is still issued") { Least = 0, Most = 1 },
+
+        new("cover", "land_cover", KeyKind.Path, null, "raster of land-cover codes"),
+        new("cover", "soil_group", KeyKind.Path, null, "raster of hydrologic soil groups: 1 = A, 2 = B, 3 = C, 4 = D, 5 = A/D, 6 = B/D, 7 = C/D"),
+        new("cover", "lookup", KeyKind.Path, null, "your own table of runoff coefficients by land cover and soil group; default: the table shipped"),
+
+        new("rainfall", "table", KeyKind.Path, null, "NOAA Atlas 14 file or a plain table"),
+        new("rainfall", "quantity", KeyKind.Choice, null, "what the table holds; needed only when it does not say") { Words = ["depth", "intensity"] },
+        new("rainfall", "unit", KeyKind.Choice, null, "unit of the table; needed only when it does not say") { Words = ["mm", "in", "mm/h", "in/h"] },
+
+        new("flow", "methods", KeyKind.Choices, "[\"rational\"]", "methods to compute") { Words = ["rational", "regression", "given"] },
+        new("flow", "choose", KeyKind.Choice, null, "method that sets the design value; default: the first of methods") { Words = ["rational", "regression", "given"] },
+        new("flow", "return_periods", KeyKind.Numbers, "[2, 10, 25, 50, 100]", "years") { Least = 1.0001, Most = 10000 },
+        new("flow", "design_return_period", KeyKind.Number, null, "years; default: by road class") { Least = 1.0001, Most = 10000 },
+        new("flow", "check_return_period", KeyKind.Number, null, "years; default: by road class") { Least = 1.0001, Most = 10000 },
+        new("flow", "runoff_coefficient", KeyKind.Number, null, "rational C where no land cover is given") { Least = 0.01, Most = 1 },
+        new("flow", "time_of_concentration", KeyKind.Choices, "[\"kirpich\", \"nrcs-velocity\"]", "methods for the time of concentration") { Words = ["kirpich", "nrcs-velocity"] },
+        new("flow", "time_of_concentration_choose", KeyKind.Choice, null, "which time is used; default: the first method that can be computed") { Words = ["kirpich", "nrcs-velocity", "median", "smallest"] },
+        new("flow", "smallest_time_of_concentration", KeyKind.Quantity, "\"5 min\"", "floor of the time of concentration (common practice)") { Dimension = "time", Least = 60 },
+        new("flow", "regression", KeyKind.Path, null, "regression equations (TOML or CSV)"),
+        new("flow", "region", KeyKind.Text, null, "region of the regression equations"),
+        new("flow", "given", KeyKind.Path, null, "table crossing_id (or * for all), return_period_yr, flow_m3_s or flow_cfs"),
+
+        new("culvert", "shapes", KeyKind.Choices, "[\"circle\", \"box\"]", "shapes allowed") { Words = ["circle", "box"] },
+        new("culvert", "inlets", KeyKind.Texts, "[\"hds5-1-1\", \"hds5-8-1\"]", "inlet types allowed, by chart and scale of HDS-5"),
+        new("culvert", "largest_number_of_barrels", KeyKind.Integer, "4", "barrels side by side (common practice)") { Least = 1, Most = 20 },
+        new("culvert", "roughness", KeyKind.Number, "0.012", "Manning n of the barrel; concrete 0.012 (HDS-5 2nd ed. table 4)") { Least = 0.005, Most = 0.1 },
+        new("culvert", "entrance_loss", KeyKind.Number, null, "entrance loss coefficient; default: the inlet's own") { Least = 0, Most = 2 },
+        new("culvert", "sizes_circle", KeyKind.Path, null, "your own table of pipe sizes; default: the table shipped"),
+        new("culvert", "sizes_box", KeyKind.Path, null, "your own table of box sizes; default: the table shipped"),
+
+        new("criteria", "hw_over_d", KeyKind.Number, "1.5", "largest headwater depth over rise at the design flood (common practice)") { Least = 0.3, Most = 10 },
+        Length("criteria", "freeboard", "\"0.3 m\"", "from the design headwater to the lowest road level (common practice)", 0),
+        Length("criteria", "largest_headwater_depth", null, "above the inlet invert, at the design flood", 0.01),
+        Length("criteria", "highest_headwater_elevation", null, "at the design flood", -500),
+        Length("criteria", "smallest_rise", null, "smallest diameter or rise; default: by road class", 0.05),
+        Length("criteria", "smallest_cover", "\"0.3 m\"", "from the crown to the road level (common practice)", 0),
+        new("criteria", "largest_outlet_velocity", KeyKind.Quantity, null, "at the design flood; default: no limit, high velocity is a finding") { Dimension = "velocity", Least = 0.1 },
+        Length("criteria", "largest_overtopping_depth", null, "over the lowest road point at the check flood; default: no limit, overtopping is a finding", 0),
+
+        new("tailwater", "method", KeyKind.Choice, "\"normal-depth\"", "normal depth in a channel, or a fixed elevation") { Words = ["normal-depth", "fixed"] },
+        Length("tailwater", "bottom_width", null, "channel bottom width; default: from the drainage area, and a finding says so", 0),
+        new("tailwater", "side_slope", KeyKind.Number, "2.0", "channel side slope, horizontal per one vertical") { Least = 0, Most = 20 },
+        new("tailwater", "roughness", KeyKind.Number, "0.04", "Manning n of the channel; natural streams on plains 0.03-0.05 (Chow 1959, table 5-6)") { Least = 0.01, Most = 0.3 },
+        new("tailwater", "slope", KeyKind.Quantity, null, "bed slope; default: from the terrain below the outlet") { Dimension = "slope", Least = 1e-6, Most = 1 },
+        Length("tailwater", "elevation", null, "for method \"fixed\"", -500),
+    ];
+
+    /// <summary>The key with a table and a name, or null.</summary>
+    public static ProjectKey? Find(string table, string name) => All.FirstOrDefault(k => k.Table == table && k.Name == name);
+
+    private static ProjectKey Length(string table, string name, string? @default, string description, double least) =>
+        new(table, name, KeyKind.Quantity, @default, description) { Dimension = "length", Least = least };
+}
