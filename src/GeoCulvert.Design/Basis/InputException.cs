@@ -21,7 +21,7 @@ public sealed class InputException : Exception
 
     /// <summary>Creates the exception for several problems.</summary>
     public InputException(IReadOnlyList<InputProblem> problems)
-        : base(string.Join(Environment.NewLine, problems)) => Problems = problems;
+        : base(string.Join('\n', problems)) => Problems = problems;
 
     /// <summary>Everything that is wrong, in the order it was found.</summary>
     public IReadOnlyList<InputProblem> Problems { get; }
