@@ -49,17 +49,6 @@ public partial class NameTests
         });
     }
 
-    [Fact]
-    public void FindingCodesAreDocumented()
-    {
-        var page = File.ReadAllText(Repository.Path("docs", "formats", "findings.md"));
-        Assert.All(Codes(), c => Assert.Contains($"| `{c.Code}` | {c.Severity.ToString().ToLowerInvariant()} | {c.Meaning} | {c.Action} |", page, StringComparison.Ordinal));
-        Assert.Equal(Codes().Count(), Row().Count(page));
-    }
-
     [GeneratedRegex("^[a-z0-9]+(-[a-z0-9]+)*$")]
     private static partial Regex Kebab();
-
-    [GeneratedRegex(@"^\| `[a-z0-9-]+` \|", RegexOptions.Multiline)]
-    private static partial Regex Row();
 }
