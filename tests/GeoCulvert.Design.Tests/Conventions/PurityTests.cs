@@ -10,7 +10,7 @@ public class PurityTests
 {
     private static readonly HashSet<string> ForbiddenTypes = new(StringComparer.Ordinal)
     {
-        "System.Console", "System.Environment", "System.Diagnostics.Process", "System.Diagnostics.Stopwatch", "System.IO.File", "System.IO.FileInfo",
+        "System.Console", "System.Diagnostics.Process", "System.Diagnostics.Stopwatch", "System.IO.File", "System.IO.FileInfo",
         "System.IO.FileStream", "System.IO.Directory", "System.IO.DirectoryInfo", "System.IO.Path", "System.IO.StreamWriter", "System.TimeProvider",
         "System.Net.Http.HttpClient", "System.Security.Cryptography.RandomNumberGenerator", "System.Runtime.InteropServices.NativeLibrary",
     };
@@ -47,7 +47,9 @@ public class PurityTests
             var type = metadata.GetTypeReference((TypeReferenceHandle)member.Parent);
             var name = $"{metadata.GetString(type.Namespace)}.{metadata.GetString(type.Name)}.{metadata.GetString(member.Name)}";
             if (name == "System.Random..ctor" && metadata.GetBlobReader(member.Signature) is var s && ParameterCount(ref s) == 0) name += "()";
-            if (ForbiddenMembers.Contains(name)) offences.Add(name);
+            // Iterators compiled from yield ask for the managed thread, nothing else of the environment.
+            var environment = name.StartsWith("System.Environment.", StringComparison.Ordinal) && name != "System.Environment.get_CurrentManagedThreadId";
+            if (environment || ForbiddenMembers.Contains(name)) offences.Add(name);
         }
 
         Assert.Empty(offences);
