@@ -49,6 +49,8 @@ public sealed record DesignFlowRule(string Method, double DifferenceFactor = 2)
         var findings = chosen.Findings.ToList();
         if (chosen.FlowM3PerS is null)
             findings.Add(HydrologyFindings.NoDesignFlow.With($"{Method} at {chosen.ReturnPeriodYr:G6} yr"));
+        else
+            findings.AddRange(all.Where(f => f.FlowM3PerS is null).Select(f => HydrologyFindings.OtherMethodMissing.With(string.Join("; ", f.Findings.Select(k => k.Text)))));
         var values = all.Where(f => f.FlowM3PerS > 0).Select(f => f.FlowM3PerS!.Value).ToArray();
         double? spread = values.Length > 1 ? values.Max() / values.Min() : null;
         if (spread > DifferenceFactor)

@@ -18,7 +18,8 @@ public sealed class FlowSurfaces
     private FlowSurfaces(PublishedTable cover, PublishedTable shallow)
     {
         var velocity = shallow.Rows.ToDictionary(r => r.Text("id"), r => r, StringComparer.OrdinalIgnoreCase);
-        foreach (var row in cover.Rows)
+        // A table of the user may hold runoff coefficients only.
+        foreach (var row in cover.Has("n_overland") && cover.Has("shallow_flow") ? cover.Rows : [])
         {
             var (id, n, regime) = (row.Text("cover_id"), row.NumberOrNull("n_overland"), row.Text("shallow_flow"));
             if (n is not { } roughness || !(roughness > 0) || regime.Length == 0) continue;

@@ -29,6 +29,12 @@ public static class HydrologyFindings
         "A method could not be computed because a figure it needs is missing.",
         "Give the figure, or leave the method out.");
 
+    /// <summary>A method beside the chosen one gave nothing.</summary>
+    public static readonly FindingCode OtherMethodMissing = new(
+        "other-method-missing", Severity.Note,
+        "A method that was asked for beside the chosen one could not be computed; the chosen value does not depend on it.",
+        "Give what it needs, or leave the method out.");
+
     /// <summary>Kirpich's basins were of another kind.</summary>
     public static readonly FindingCode KirpichRange = new(
         "kirpich-outside-range", Severity.Note,

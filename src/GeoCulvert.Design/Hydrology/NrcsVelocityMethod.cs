@@ -62,7 +62,8 @@ public sealed record NrcsVelocityMethod : ITimeOfConcentration
         var findings = new List<Finding>();
         var rain = context.TwoYear24HourDepthMm is null ? context.Rainfall?.Intensity(1440, 2) : null;
         if ((context.TwoYear24HourDepthMm ?? rain?.DepthMm) is not { } p2 || !(p2 > 0))
-            return TimeOfConcentration.Missing(Name, "no 2-year 24-hour rainfall for the sheet flow");
+            return TimeOfConcentration.Missing(Name, "no 2-year 24-hour rainfall for the sheet flow"
+                + (rain is null ? "" : $"; {rain.Origin} does not reach it"));
         if (FlowPathPieces.Path(catchment, findings) is not { } path)
             return TimeOfConcentration.Missing(Name, "no flow path with a profile, nor its length and slope");
         var end = path[^1].DistanceM;
@@ -112,6 +113,6 @@ public sealed record NrcsVelocityMethod : ITimeOfConcentration
             new("shallow_time_min", shallow, "min", "sum of L / (k s^0.5) over the pieces", ShallowSource),
             new("channel_time_min", inChannel, "min", "sum of L / V over the pieces", ChannelSource),
             new("time_of_concentration_min", sheet + shallow + inChannel, "min", $"{sheet:0.00} + {shallow:0.00} + {inChannel:0.00}", "NEH-630 ch. 15"),
-        ], [.. findings, .. (rain?.Findings ?? []).Where(f => f.Kind != HydrologyFindings.PartialDurationSeries)]);
+        ], [.. findings, .. rain?.Findings ?? []]);
     }
 }

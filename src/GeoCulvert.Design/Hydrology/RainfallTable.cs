@@ -144,10 +144,6 @@ public sealed class RainfallTable : IRainfall
         var t = Bracket(ReturnPeriodsYr, returnPeriodYr, Deviate, "return period", "yr", findings);
         if (d is not { } dd || t is not { } tt)
             return new(durationMin, returnPeriodYr, null, [], 0, 0, Origin, findings);
-        if (Series != RainfallSeries.AnnualMaximum && returnPeriodYr < 10)
-            findings.Add(HydrologyFindings.PartialDurationSeries.With(
-                $"ARI {returnPeriodYr:G6} yr has an annual chance of {100 * (1 - Math.Exp(-1 / returnPeriodYr)):0.0} %"
-                + (Series == RainfallSeries.NotStated ? " (the file does not name its series; partial duration is taken)" : ""), returnPeriodYr));
         RainfallCorner Corner(int i, int j) => new(DurationsMin[i], ReturnPeriodsYr[j], _values[i, j], EntryIntensityMmPerH(i, j));
         RainfallCorner[] corners = [Corner(dd.Low, tt.Low), Corner(dd.Low, tt.High), Corner(dd.High, tt.Low), Corner(dd.High, tt.High)];
         double u = dd.Weight, v = tt.Weight;
@@ -156,6 +152,15 @@ public sealed class RainfallTable : IRainfall
             Blend(corners[2].IntensityMmPerH, corners[3].IntensityMmPerH, v), u);
         return new(durationMin, returnPeriodYr, i, corners, u, v, Origin, findings);
     }
+
+    /// <summary>The note on what the table's return periods mean, for a run that asks for short ones; once for a run, not for each crossing.</summary>
+    /// <param name="shortestReturnPeriodYr">Shortest return period of the run, years.</param>
+    /// <returns>Null for annual maxima, and from 10 years on, where the two kinds of series agree.</returns>
+    public Finding? SeriesFinding(double shortestReturnPeriodYr) => Series == RainfallSeries.AnnualMaximum || shortestReturnPeriodYr >= 10
+        ? null
+        : HydrologyFindings.PartialDurationSeries.With(
+            $"{Origin}: an average recurrence interval of {shortestReturnPeriodYr:G6} yr has an annual chance of {100 * (1 - Math.Exp(-1 / shortestReturnPeriodYr)):0.0} %"
+            + (Series == RainfallSeries.NotStated ? "; the file does not name its series, partial duration is taken" : ""), shortestReturnPeriodYr);
 
     /// <summary>Standard normal deviate of the annual non-exceedance probability of a return period in this table's series.</summary>
     public double Deviate(double returnPeriodYr) => Normal.InvCDF(

@@ -37,18 +37,19 @@ public sealed record RegressionMethod(RegressionEquationSet Set, string Region, 
         var values = new Dictionary<string, double>(StringComparer.Ordinal);
         var steps = new List<Step>();
         var findings = new List<Finding>();
+        var withoutRange = new List<string>();
         foreach (var name in equation.Equation.Names)
         {
             var variable = Set.Variable(name, Region)!;
             if (ValueOf(variable, catchment, out var origin, out var trouble) is not { } value) return PeakFlow.Missing(Name, equation.ReturnPeriodYr, trouble);
             values[name] = value;
             steps.Add(new(name, value, variable.Unit, "", origin));
-            if (variable.Low is null || variable.High is null)
-                findings.Add(HydrologyFindings.RegressionRangeUnknown.With($"{Set.Id}: {name} {value:G5} {variable.Unit}".TrimEnd(), value));
+            if (variable.Low is null || variable.High is null) withoutRange.Add($"{name} {value:G5} {variable.Unit}".TrimEnd());
             if (value < variable.Low || value > variable.High)
                 findings.Add(HydrologyFindings.RegressionRange.With(
                     $"{Set.Id}, {Region}: {name} {value:G5} {variable.Unit} against {variable.Low:G5} to {variable.High:G5}", value, value < variable.Low ? variable.Low : variable.High));
         }
+        if (withoutRange.Count > 0) findings.Add(HydrologyFindings.RegressionRangeUnknown.With($"{Set.Id}, {Region}: {string.Join(", ", withoutRange)}"));
         var printed = equation.Equation.Value(values);
         if (!double.IsFinite(printed) || printed < 0)
             return PeakFlow.Missing(Name, equation.ReturnPeriodYr, $"{equation.Equation.WithNumbers(values)} gives no flow") with { Steps = steps };

@@ -24,7 +24,7 @@ public enum TimeOfConcentrationChoice
 /// <param name="Choice">The method's name, or "median", "smallest", "largest".</param>
 /// <param name="All">Every method's result.</param>
 /// <param name="SpreadRatio">Longest over shortest; null with fewer than two.</param>
-/// <param name="Findings">Doubts about the choice and about the methods.</param>
+/// <param name="Findings">Doubts about the choice and about the methods that have a part in it.</param>
 public sealed record ChosenTimeOfConcentration(
     double? TimeMin, double? ComputedTimeMin, string Choice, IReadOnlyList<TimeOfConcentration> All, double? SpreadRatio,
     IReadOnlyList<Finding> Findings);
@@ -57,7 +57,12 @@ public sealed record TimeOfConcentrationRule(
             TimeOfConcentrationChoice.Smallest => times[0],
             _ => times[^1],
         };
-        var findings = all.SelectMany(t => t.Findings).ToList();
+        // Doubts of a method that has no part in the choice stay with it in All.
+        var part = named is not null ? [named] : times.Length == 0 ? all : [.. all.Where(t => t.TimeMin is not null)];
+        var findings = part.SelectMany(t => t.Findings).ToList();
+        if (computed is not null)
+            findings.AddRange(all.Where(t => t.TimeMin is null).Select(t => HydrologyFindings.OtherMethodMissing.With(
+                string.Join("; ", t.Findings.Select(f => f.Text)))));
         double? spread = times.Length > 1 ? times[^1] / times[0] : null;
         if (spread > SpreadFactor)
             findings.Add(HydrologyFindings.TimeSpread.With(

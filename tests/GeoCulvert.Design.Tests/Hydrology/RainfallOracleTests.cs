@@ -61,6 +61,16 @@ public class RainfallOracleTests
     [Fact]
     public void InterpolatesAsByHand() => Assert.Equal(66.000, Read(AnnArbor).Intensity(42, 25).IntensityMmPerH!.Value, 0.001);
 
+    // Langbein: an average recurrence interval of 2 years has an annual chance of 1 - exp(-0.5) = 39.3 %; of 1 year 63.2 %, z = -0.337.
+    [Fact]
+    public void PartialDurationIsNotedOnce()
+    {
+        var table = Read(AnnArbor);
+        Assert.Contains("39.3 %", table.SeriesFinding(2)!.Text, StringComparison.Ordinal);
+        Assert.Null(table.SeriesFinding(10));
+        Assert.Equal(-0.3375, table.Deviate(1), 5e-4);
+    }
+
     [Fact]
     public void DepthAndIntensityFormsOfOneTableAgree()
     {

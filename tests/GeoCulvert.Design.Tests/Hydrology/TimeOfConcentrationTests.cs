@@ -16,7 +16,7 @@ public class TimeOfConcentrationInvariantTests
     };
 
     // TxDOT Hydraulic Design Manual eq. 4-15: K = 0.0078 with feet and 0.0195 with metres.
-    // By hand in feet: 1000 ft at 0.05: 0.0078 x 1000^0.77 x 0.05^-0.385 = 0.0078 x 204.174 x 3.16868 = 5.0463 min.
+    // By hand in feet: 1000 ft at 0.05: 0.0078 x 1000^0.77 x 0.05^-0.385 = 0.0078 x 204.174 x 3.16881 = 5.0465 min.
     [Fact]
     public void KirpichInFeetAndMetres()
     {
@@ -25,13 +25,13 @@ public class TimeOfConcentrationInvariantTests
     }
 
     // The metric forms by converting the printed constants by hand: 0.007 (1/0.3048)^0.8 25.4^0.5 = 0.09126 h with m and mm;
-    // 1.49 (1/0.3048)^(2/3) 0.3048 = 1.0028 (the printed 1.49 stands for 1.486).
+    // 1.49 (1/0.3048)^(2/3) 0.3048 = 1.0027 (the printed 1.49 stands for 1.486).
     [Fact]
     public void SheetAndChannelInMetricForm()
     {
         var sheet = 60 * 0.09126 * Math.Pow(0.15 * 30, 0.8) / (Math.Sqrt(70) * Math.Pow(0.03, 0.4));
         Assert.Equal(sheet, NrcsVelocityMethod.SheetTimeMin(30, 0.15, 70, 0.03), 0.0005 * sheet);
-        var channel = 1.0028 * Math.Pow(0.4, 2.0 / 3) * Math.Sqrt(0.01) / 0.04;
+        var channel = 1.0027 * Math.Pow(0.4, 2.0 / 3) * Math.Sqrt(0.01) / 0.04;
         Assert.Equal(channel, NrcsVelocityMethod.ChannelVelocityMPerS(0.4, 0.04, 0.01), 0.0005 * channel);
     }
 
@@ -108,5 +108,10 @@ public class TimeOfConcentrationInvariantTests
         var chosen = new TimeOfConcentrationRule(TimeOfConcentrationChoice.Named, "kirpich").Choose(
             [TimeOfConcentration.Missing("kirpich", "no slope"), new("nrcs-velocity", 20, [], [], [])]);
         Assert.Null(chosen.TimeMin);
+        Assert.Contains(chosen.Findings, f => f.Severity == Severity.Error);
+        // The other way round the result stands, so nothing about it is an error.
+        var other = new TimeOfConcentrationRule(TimeOfConcentrationChoice.Named, "nrcs-velocity").Choose(chosen.All);
+        Assert.Equal(20, other.TimeMin);
+        Assert.Equal(HydrologyFindings.OtherMethodMissing, Assert.Single(other.Findings).Kind);
     }
 }
