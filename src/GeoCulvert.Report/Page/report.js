@@ -1,0 +1,253 @@
+(function () {
+  'use strict';
+  var $ = function (q, e) { return (e || document).querySelector(q); };
+  var $$ = function (q, e) { return Array.prototype.slice.call((e || document).querySelectorAll(q)); };
+  var NS = 'http://www.w3.org/2000/svg';
+  var body = document.body, map = $('#map'), marks = $('#marks'), furniture = $('#furniture');
+  var rows = $$('#list tbody tr'), sheets = {}, rowOf = {}, idOf = {}, chosen = null;
+  body.classList.add('live');
+
+  rows.forEach(function (tr) {
+    var c = tr.dataset.c;
+    rowOf[c] = tr;
+    idOf[c] = decodeURIComponent($('a', tr).getAttribute('href').slice('#crossing='.length));
+    tr.words = tr.textContent.toLowerCase() + ' ' + idOf[c].toLowerCase();
+  });
+  $$('article.sheet').forEach(function (a) { sheets[a.dataset.c] = a; a.id = 'sheet-' + a.dataset.c; });
+
+  /* ---- the view: part of the map that is shown, in map units ---- */
+  var W = +map.dataset.w, H = +map.dataset.h, view = { x: 0, y: 0, w: W, h: H }, u = 1, size = { w: 1, h: 1 };
+  var labels = $$('.m', marks).map(function (g) {
+    var t = g.transform.baseVal.getItem(0).matrix;
+    return { g: g, x: t.e, y: t.f, text: $('.lb', g), box: null, rank: g.classList.contains('bad') ? 0 : g.classList.contains('look') ? 1 : 2 };
+  }).sort(function (a, b) { return a.rank - b.rank; });
+
+  function measure() {
+    var r = map.getBoundingClientRect();
+    size = { w: Math.max(1, r.width), h: Math.max(1, r.height) };
+  }
+  function fit() {
+    var s = Math.max(W / size.w, H / size.h);
+    view = { w: s * size.w, h: s * size.h };
+    view.x = (W - view.w) / 2; view.y = (H - view.h) / 2;
+    show();
+  }
+  function show() {
+    u = view.w / size.w;
+    map.setAttribute('viewBox', [view.x, view.y, view.w, view.h].map(function (v) { return v.toFixed(2); }).join(' '));
+    map.style.setProperty('--u', u.toFixed(4));
+    drawFurniture();
+    clearTimeout(show.timer);
+    show.timer = setTimeout(placeLabels, 60);
+  }
+  function zoom(f, cx, cy) {
+    var w = Math.min(W * 4, Math.max(size.w * 0.1, view.w * f));
+    f = w / view.w;
+    view = { x: cx + (view.x - cx) * f, y: cy + (view.y - cy) * f, w: w, h: view.h * f };
+    show();
+  }
+  function middle() { return [view.x + view.w / 2, view.y + view.h / 2]; }
+  function at(e) {
+    var r = map.getBoundingClientRect();
+    return [view.x + (e.clientX - r.left) * u, view.y + (e.clientY - r.top) * u];
+  }
+  function el(name, attributes, text) {
+    var n = document.createElementNS(NS, name);
+    Object.keys(attributes).forEach(function (k) { n.setAttribute(k, attributes[k]); });
+    if (text) n.textContent = text;
+    furniture.appendChild(n);
+  }
+  function drawFurniture() {
+    var perUnit = +map.dataset.length, most = 150 * u * perUnit, p = Math.pow(10, Math.floor(Math.log10(most))), n = most / p;
+    var bar = p * (n >= 5 ? 5 : n >= 2 ? 2 : 1), px = bar / perUnit / u, name = bar + ' ' + map.dataset.symbol;
+    if (map.dataset.symbol === 'm' && bar >= 1000) name = bar / 1000 + ' km';
+    furniture.replaceChildren();
+    furniture.setAttribute('transform', 'translate(' + view.x + ' ' + view.y + ') scale(' + u + ')');
+    var y = size.h - 16, x = size.w - 26;
+    el('rect', { 'class': 'plate', x: 8, y: y - 18, width: px + 24, height: 28, rx: 3 });
+    el('path', { 'class': 'sb', d: 'M20 ' + (y - 1) + 'v5h' + px + 'v-5' });
+    el('text', { x: 20 + px / 2, y: y - 4, 'text-anchor': 'middle' }, name);
+    el('rect', { 'class': 'plate', x: x - 16, y: size.h - 60, width: 32, height: 50, rx: 3 });
+    el('path', { 'class': 'na', d: 'M' + x + ' ' + (size.h - 55) + 'l7 20l-7-5l-7 5z' });
+    el('text', { x: x, y: size.h - 17, 'text-anchor': 'middle' }, 'N');
+  }
+  function placeLabels() {
+    var taken = [], many = 0;
+    labels.forEach(function (l) { l.sx = (l.x - view.x) / u; l.sy = (l.y - view.y) / u; l.seen = l.sx > -20 && l.sy > -20 && l.sx < size.w + 20 && l.sy < size.h + 20; if (l.seen) many++; });
+    labels.forEach(function (l) { if (l.seen && many < 400) taken.push([l.sx - 8, l.sy - 8, l.sx + 8, l.sy + 8, l]); });
+    var order = labels.filter(function (l) { return l.g.dataset.c === chosen; }).concat(labels);
+    var done = {};
+    order.forEach(function (l) {
+      if (done[l.g.dataset.c]) return;
+      done[l.g.dataset.c] = 1;
+      var fits = l.seen && (many < 400 || l.g.dataset.c === chosen);
+      if (fits) {
+        if (!l.box) { l.text.classList.remove('off'); l.box = l.text.getBBox(); }
+        var right = l.sx + l.box.x + l.box.width > size.w - 4, x0 = right ? l.sx - l.box.x - l.box.width : l.sx + l.box.x, b = [x0, l.sy + l.box.y, x0 + l.box.width, l.sy + l.box.y + l.box.height];
+        fits = l.g.dataset.c === chosen || !taken.some(function (t) { return t[4] !== l && t[0] < b[2] && b[0] < t[2] && t[1] < b[3] && b[1] < t[3]; });
+        if (fits) { taken.push(b.concat([l])); l.text.style.transform = right ? 'translateX(' + -(2 * l.box.x + l.box.width) + 'px)' : ''; }
+      }
+      l.text.classList.toggle('off', !fits);
+    });
+  }
+
+  /* ---- moving about ---- */
+  map.addEventListener('wheel', function (e) {
+    e.preventDefault();
+    var p = at(e);
+    zoom(Math.exp(Math.max(-1, Math.min(1, e.deltaY * (e.deltaMode ? 0.05 : 0.002)))), p[0], p[1]);
+  }, { passive: false });
+  var held = {}, moved = false, last = null;
+  map.addEventListener('pointerdown', function (e) { if (e.button === 0) { held[e.pointerId] = [e.clientX, e.clientY]; moved = false; last = null; } });
+  map.addEventListener('pointermove', function (e) {
+    var p = at(e), ids = Object.keys(held), unit = +map.dataset.unit;
+    $('#where').textContent = 'x ' + (+map.dataset.west + p[0] * unit).toFixed(1) + '  y ' + (+map.dataset.north - p[1] * unit).toFixed(1);
+    if (!held[e.pointerId]) return;
+    var dx = e.clientX - held[e.pointerId][0], dy = e.clientY - held[e.pointerId][1];
+    if (!moved && Math.abs(dx) + Math.abs(dy) < 4) return;
+    if (!moved) { moved = true; try { map.setPointerCapture(e.pointerId); } catch (err) { /* the pointer has gone */ } }
+    held[e.pointerId] = [e.clientX, e.clientY];
+    if (ids.length === 2) {
+      var a = held[ids[0]], b = held[ids[1]], d = Math.hypot(a[0] - b[0], a[1] - b[1]), r = map.getBoundingClientRect();
+      if (last && d > 0) zoom(last / d, view.x + ((a[0] + b[0]) / 2 - r.left) * u, view.y + ((a[1] + b[1]) / 2 - r.top) * u);
+      last = d;
+    } else { view.x -= dx * u; view.y -= dy * u; show(); }
+  });
+  ['pointerup', 'pointercancel'].forEach(function (n) { map.addEventListener(n, function (e) { delete held[e.pointerId]; last = null; }); });
+  map.addEventListener('click', function (e) {
+    var hit = e.target.closest('[data-c]');
+    if (!moved && hit) choose(hit.dataset.c, false, true);
+  });
+  map.addEventListener('keydown', function (e) {
+    var m = middle(), step = 60 * u;
+    if (e.key === '+' || e.key === '=') zoom(0.7, m[0], m[1]);
+    else if (e.key === '-') zoom(1 / 0.7, m[0], m[1]);
+    else if (e.key === '0') fit();
+    else if (e.key.indexOf('Arrow') === 0) {
+      view.x += e.key === 'ArrowRight' ? step : e.key === 'ArrowLeft' ? -step : 0;
+      view.y += e.key === 'ArrowDown' ? step : e.key === 'ArrowUp' ? -step : 0;
+      show();
+    } else return;
+    e.preventDefault();
+  });
+  $$('[data-zoom]').forEach(function (b) {
+    b.addEventListener('click', function () {
+      var m = middle();
+      if (b.dataset.zoom === 'all') fit(); else zoom(b.dataset.zoom === 'in' ? 0.6 : 1 / 0.6, m[0], m[1]);
+    });
+  });
+  $$('[data-switch]').forEach(function (box) {
+    var key = box.dataset.switch;
+    function apply() {
+      if (key === 'labels') { marks.classList.toggle('nolabels', !box.checked); return; }
+      $$('[data-layer~="' + key + '"]', map).forEach(function (g) { g.classList.toggle('hide', !box.checked); });
+    }
+    box.addEventListener('change', apply);
+    apply();
+  });
+
+  /* ---- the selection: list, map, sheet and address stay together ---- */
+  function choose(c, pan, reveal) {
+    if (!rowOf[c]) return;
+    if (chosen !== null) {
+      $$('.on').forEach(function (e) { e.classList.remove('on'); });
+      rowOf[chosen].removeAttribute('aria-current');
+    }
+    chosen = c;
+    rowOf[c].classList.add('on');
+    rowOf[c].setAttribute('aria-current', 'true');
+    $$('[data-c="' + c + '"]', map).forEach(function (e) { e.classList.add('on'); });
+    if (sheets[c]) sheets[c].classList.add('on');
+    body.classList.add('has');
+    $('#chosen').textContent = 'Sheet of crossing ' + idOf[c];
+    if (reveal) {
+      var box = rowOf[c].closest('.scroll'), top = rowOf[c].offsetTop, head = $('#list thead').offsetHeight;
+      if (top - head < box.scrollTop || top + 40 > box.scrollTop + box.clientHeight) box.scrollTop = top - box.clientHeight / 2;
+    }
+    var mark = labels.find(function (l) { return l.g.dataset.c === c; });
+    if (mark) {
+      marks.appendChild(mark.g);
+      var sx = (mark.x - view.x) / u, sy = (mark.y - view.y) / u;
+      if (pan && (sx < 40 || sy < 40 || sx > size.w - 160 || sy > size.h - 40)) { view.x = mark.x - view.w / 2; view.y = mark.y - view.h / 2; show(); }
+    }
+    placeLabels();
+    var hash = '#crossing=' + encodeURIComponent(idOf[c]);
+    if (location.hash !== hash) { try { history.replaceState(null, '', hash); } catch (err) { location.hash = hash; } }
+  }
+  function fromAddress() {
+    if (location.hash.indexOf('#crossing=') !== 0) return;
+    var id;
+    try { id = decodeURIComponent(location.hash.slice('#crossing='.length)); } catch (err) { return; }
+    var c = Object.keys(idOf).find(function (k) { return idOf[k] === id; });
+    if (c !== undefined && c !== chosen) choose(c, true, true);
+  }
+  window.addEventListener('hashchange', fromAddress);
+  var listBody = $('#list tbody');
+  listBody.addEventListener('click', function (e) {
+    var tr = e.target.closest('tr');
+    if (!tr || e.ctrlKey || e.metaKey) return;
+    e.preventDefault();
+    choose(tr.dataset.c, true, false);
+  });
+  function visible() { return $$('#list tbody tr').filter(function (tr) { return !tr.hidden; }); }
+  listBody.addEventListener('keydown', function (e) {
+    if (e.key !== 'ArrowDown' && e.key !== 'ArrowUp') return;
+    var all = visible(), i = all.indexOf(e.target.closest('tr')) + (e.key === 'ArrowDown' ? 1 : -1);
+    if (all[i]) { $('a', all[i]).focus(); e.preventDefault(); }
+  });
+  function step(d) {
+    var all = visible(), i = chosen === null ? -1 : all.indexOf(rowOf[chosen]);
+    var tr = all[chosen === null ? 0 : (i + d + all.length) % all.length];
+    if (tr) choose(tr.dataset.c, true, true);
+  }
+  $('#prev').addEventListener('click', function () { step(-1); });
+  $('#next').addEventListener('click', function () { step(1); });
+
+  /* ---- search, filter, sort ---- */
+  function filter() {
+    var words = $('#find').value.toLowerCase().split(/\s+/).filter(Boolean), look = $('#look').checked, n = 0;
+    rows.forEach(function (tr) {
+      tr.hidden = (look && !tr.dataset.look) || !words.every(function (w) { return tr.words.indexOf(w) >= 0; });
+      if (!tr.hidden) n++;
+    });
+    $('#shown').textContent = n === rows.length ? n + (n === 1 ? ' crossing' : ' crossings') : n + ' of ' + rows.length + ' crossings';
+    $('#none').hidden = n > 0;
+  }
+  $('#find').addEventListener('input', filter);
+  $('#look').addEventListener('change', filter);
+  $$('#list th button').forEach(function (button, column) {
+    button.addEventListener('click', function () {
+      var th = button.parentNode, number = th.classList.contains('n'), down = th.getAttribute('aria-sort') ? th.getAttribute('aria-sort') === 'ascending' : number && column > 1;
+      $$('#list th').forEach(function (h) { h.removeAttribute('aria-sort'); });
+      th.setAttribute('aria-sort', down ? 'descending' : 'ascending');
+      var key = function (tr) { var td = tr.cells[column]; return number ? (td.dataset.v === undefined ? null : +td.dataset.v) : td.textContent; };
+      var compare = new Intl.Collator(undefined, { numeric: true }).compare;
+      rows.map(function (tr, i) { return [key(tr), i, tr]; }).sort(function (a, b) {
+        if (a[0] === null || b[0] === null) return (a[0] === null) - (b[0] === null) || a[1] - b[1];
+        var d = number ? a[0] - b[0] : compare(a[0], b[0]);
+        return (down ? -d : d) || a[1] - b[1];
+      }).forEach(function (r) { listBody.appendChild(r[2]); });
+    });
+  });
+
+  /* ---- print: the chosen sheet, or all with map and list ---- */
+  function print(all) {
+    body.classList.toggle('printall', all);
+    window.print();
+    body.classList.remove('printall');
+  }
+  $('#print1').addEventListener('click', function () { if (chosen === null) step(1); print(false); });
+  $('#printall').addEventListener('click', function () { print(true); });
+
+  new ResizeObserver(function () {
+    var before = size.w, m = middle();
+    measure();
+    if (before === 1) { fit(); return; }
+    view = { w: u * size.w, h: u * size.h };
+    view.x = m[0] - view.w / 2; view.y = m[1] - view.h / 2;
+    show();
+  }).observe(map);
+  measure();
+  fit();
+  fromAddress();
+})();
