@@ -79,14 +79,16 @@ internal static class Atlas14Reader
         && (cells[0].Trim().StartsWith("by duration", StringComparison.OrdinalIgnoreCase)
             || (cells[0].Trim().Length == 0 && cells[1].Trim().Length > 0));
 
-    private static IEnumerable<(int Number, List<string> Cells)> Lines(string text)
+    private static List<(int Number, List<string> Cells)> Lines(string text)
     {
+        var result = new List<(int, List<string>)>();
         var lines = text.TrimStart('\uFEFF').Split('\n');
         for (var i = 0; i < lines.Length; i++)
         {
             var records = CsvText.Read(lines[i].TrimEnd('\r'));
-            if (records.Count > 0) yield return (i + 1, RainfallCells.WithoutTrailingBlanks(records[0].Fields));
+            if (records.Count > 0) result.Add((i + 1, RainfallCells.WithoutTrailingBlanks(records[0].Fields)));
         }
+        return result;
     }
 
     private static RainfallMeasure MeasureOf(string name, (string Text, int Line)? unit, (string Text, int Line)? type, RainfallMeasure? stated)

@@ -42,9 +42,10 @@ internal sealed class FlowPathPieces(IReadOnlyList<FlowPathPoint> path, double l
     }
 
     /// <summary>Pieces between two distances, about <paramref name="lengthM"/> long, also cut where cover changes.</summary>
-    public IEnumerable<(double From, double To, FlowSurface Surface)> Cut(double fromM, double toM, double lengthM, bool byCover)
+    public IReadOnlyList<(double From, double To, FlowSurface Surface)> Cut(double fromM, double toM, double lengthM, bool byCover)
     {
-        if (!(toM > fromM)) yield break;
+        var result = new List<(double, double, FlowSurface)>();
+        if (!(toM > fromM)) return result;
         var ends = new List<double> { fromM };
         if (byCover)
             for (var i = 1; i < path.Count; i++)
@@ -57,9 +58,10 @@ internal sealed class FlowPathPieces(IReadOnlyList<FlowPathPoint> path, double l
             for (var j = 0; j < pieces; j++)
             {
                 var a = ends[k - 1] + j * step;
-                yield return (a, j == pieces - 1 ? ends[k] : a + step, SurfaceAt(a));
+                result.Add((a, j == pieces - 1 ? ends[k] : a + step, SurfaceAt(a)));
             }
         }
+        return result;
     }
 
     /// <summary>Sheet-flow n between two distances, weighted by length (the equation takes one n for the whole reach).</summary>
@@ -80,13 +82,15 @@ internal sealed class FlowPathPieces(IReadOnlyList<FlowPathPoint> path, double l
             findings.Add(HydrologyFindings.SurfaceAssumed.With($"{unknown:0} m of {overlandEndM:0} m of overland flow path taken as {defaultSurface}", unknown));
     }
 
-    private IEnumerable<(double LengthM, FlowSurface Surface, bool Known)> ByCover(double fromM, double toM)
+    private List<(double LengthM, FlowSurface Surface, bool Known)> ByCover(double fromM, double toM)
     {
+        var result = new List<(double, FlowSurface, bool)>();
         for (var i = 0; i < path.Count - 1; i++)
         {
             var length = Math.Min(toM, path[i + 1].DistanceM) - Math.Max(fromM, path[i].DistanceM);
-            if (length > 0) yield return (length, SurfaceOf(i), surfaces.Find(path[i].CoverId) is not null);
+            if (length > 0) result.Add((length, SurfaceOf(i), surfaces.Find(path[i].CoverId) is not null));
         }
+        return result;
     }
 
     private FlowSurface SurfaceOf(int point) => surfaces.Find(path[point].CoverId) ?? fallback;

@@ -20,9 +20,9 @@ public enum FlowPathSlope
 /// <para>Range: seven farm basins in Tennessee of 1 to 112 acres and 3 to 10 % slope (figures from memory).</para>
 /// </summary>
 /// <param name="Slope">Which slope is S; fall over length by default.</param>
-/// <param name="Multiplier">m: 1 for bare or farmed ground with well-defined channels; practice multiplies by 2 for grassed overland flow,
+/// <param name="SurfaceFactor">m: 1 for bare or farmed ground with well-defined channels; practice multiplies by 2 for grassed overland flow,
 /// 0.4 for paved surfaces and 0.2 for concrete channels (common practice, from memory).</param>
-public sealed record Kirpich(FlowPathSlope Slope = FlowPathSlope.EndToEnd, double Multiplier = 1) : ITimeOfConcentration
+public sealed record Kirpich(FlowPathSlope Slope = FlowPathSlope.EndToEnd, double SurfaceFactor = 1) : ITimeOfConcentration
 {
     private const string Origin = "Kirpich (1940)";
     private const double SmallestAreaM2 = 1 * 43560 * Units.Foot * Units.Foot, LargestAreaM2 = 112 * 43560 * Units.Foot * Units.Foot;
@@ -55,13 +55,13 @@ public sealed record Kirpich(FlowPathSlope Slope = FlowPathSlope.EndToEnd, doubl
         if (s is < LeastSlope or > MostSlope)
             findings.Add(HydrologyFindings.KirpichRange.With(
                 $"Slope {s:0.0000} m/m against {LeastSlope:0.00} to {MostSlope:0.00}", s, s < LeastSlope ? LeastSlope : MostSlope));
-        var time = Multiplier * TimeMin(length, s);
+        var time = SurfaceFactor * TimeMin(length, s);
         return new(Name, time, [],
         [
             new("flow_path_length_m", length, "m"),
             new("flow_path_slope_m_per_m", s, "m/m", "", Slope == FlowPathSlope.EndToEnd ? "fall over length" : "between 10 % and 85 % of the length"),
             new("time_of_concentration_min", time, "min",
-                $"{Multiplier:G4} x 0.0078 x ({length / Units.Foot:0.0} ft)^0.77 x {s:0.00000}^-0.385", Origin),
+                $"{SurfaceFactor:G4} x 0.0078 x ({length / Units.Foot:0.0} ft)^0.77 x {s:0.00000}^-0.385", Origin),
         ], findings);
     }
 }

@@ -35,22 +35,22 @@ public enum RainfallSeries
 /// <summary>One of the four table entries around a value.</summary>
 /// <param name="DurationMin">Duration, min.</param>
 /// <param name="ReturnPeriodYr">Return period, years.</param>
-/// <param name="TableValue">The entry as printed, in the table's own unit.</param>
+/// <param name="Value">The entry as printed, in the table's own unit.</param>
 /// <param name="IntensityMmPerH">The entry as an intensity, mm/h.</param>
-public sealed record RainfallCorner(double DurationMin, double ReturnPeriodYr, double TableValue, double IntensityMmPerH);
+public sealed record RainfallCorner(double DurationMin, double ReturnPeriodYr, double Value, double IntensityMmPerH);
 
 /// <summary>A rainfall intensity with the entries it was interpolated from.</summary>
 /// <param name="DurationMin">Duration asked for, min.</param>
 /// <param name="ReturnPeriodYr">Return period asked for, years.</param>
 /// <param name="IntensityMmPerH">Intensity, mm/h; null when the source does not reach so far (see the findings).</param>
 /// <param name="Corners">Entries shorter-rarer order: (d1,T1), (d1,T2), (d2,T1), (d2,T2); empty when there is no value.</param>
-/// <param name="DurationWeight">Weight of the longer duration, 0-1 inside the table.</param>
-/// <param name="ReturnPeriodWeight">Weight of the longer return period, 0-1 inside the table.</param>
+/// <param name="LongerDurationShare">Weight of the longer duration, 0-1 inside the table.</param>
+/// <param name="LongerReturnPeriodShare">Weight of the longer return period, 0-1 inside the table.</param>
 /// <param name="Origin">The table, for the sheet.</param>
 /// <param name="Findings">Doubts.</param>
 public sealed record RainfallIntensity(
     double DurationMin, double ReturnPeriodYr, double? IntensityMmPerH, IReadOnlyList<RainfallCorner> Corners,
-    double DurationWeight, double ReturnPeriodWeight, string Origin, IReadOnlyList<Finding> Findings)
+    double LongerDurationShare, double LongerReturnPeriodShare, string Origin, IReadOnlyList<Finding> Findings)
 {
     /// <summary>Depth over the duration, mm.</summary>
     public double? DepthMm => IntensityMmPerH * DurationMin / 60;

@@ -90,10 +90,10 @@ public sealed record RationalMethod : IPeakFlowMethod
         var found = rain.Intensity(tc, returnPeriodYr);
         findings.AddRange(found.Findings);
         if (found.IntensityMmPerH is not { } i) return null;
-        string Entry(RainfallCorner k) => $"{k.IntensityMmPerH:0.00} ({k.DurationMin:G6} min, {k.ReturnPeriodYr:G6} yr: {k.TableValue:G6})";
+        string Entry(RainfallCorner k) => $"{k.IntensityMmPerH:0.00} ({k.DurationMin:G6} min, {k.ReturnPeriodYr:G6} yr: {k.Value:G6})";
         var formula = found.Corners.Distinct().Count() == 1
             ? Entry(found.Corners[0])
-            : $"log-log between {string.Join(", ", found.Corners.Distinct().Select(Entry))}; weights {found.DurationWeight:0.000} on duration, {found.ReturnPeriodWeight:0.000} on return period";
+            : $"log-log between {string.Join(", ", found.Corners.Distinct().Select(Entry))}; weights {found.LongerDurationShare:0.000} on duration, {found.LongerReturnPeriodShare:0.000} on return period";
         steps.Add(new("intensity_mm_per_h", i, "mm/h", formula, found.Origin));
         return i;
     }

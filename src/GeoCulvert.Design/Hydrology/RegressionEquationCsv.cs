@@ -57,7 +57,7 @@ public static class RegressionEquationCsv
         if (quantity.Length > 0 && RegressionQuantity.Find(quantity) is null)
             throw new InputException($"{place}, column quantity", $"'{quantity}'", $"nothing, or one of {string.Join(", ", RegressionQuantity.All.Select(q => q.Name))}");
         return new(row.Text("name"), row.Text("unit"), RegressionQuantity.Find(quantity), row.Text("description"),
-            row.NumberOrNull("low"), row.NumberOrNull("high"), row.Text("region") is { Length: > 0 } region ? region : null);
+            (row.NumberOrNull("low"), row.NumberOrNull("high")), row.Text("region") is { Length: > 0 } region ? region : null);
     }
 
     private static RegressionEquation Equation(TableRow row, string place)

@@ -7,11 +7,10 @@ namespace GeoCulvert.Design.Hydrology;
 /// <param name="Unit">The unit the equations want it in; "" for a pure number.</param>
 /// <param name="Quantity">The catchment's own figure that serves for it (<see cref="RegressionQuantity"/>); null when it must be given by name.</param>
 /// <param name="Description">What it is.</param>
-/// <param name="Low">Smallest value of the basins behind the equations, in <paramref name="Unit"/>; null when not known.</param>
-/// <param name="High">Largest value; null when not known.</param>
-/// <param name="Region">Region the range holds for; null for all.</param>
+/// <param name="Range">Smallest and largest value of the basins behind the equations, in <paramref name="Unit"/>; null when not known.</param>
+/// <param name="Region">Region the row holds for; null for all.</param>
 public sealed record RegressionVariable(
-    string Name, string Unit, RegressionQuantity? Quantity, string Description, double? Low, double? High, string? Region);
+    string Name, string Unit, RegressionQuantity? Quantity, string Description, (double? Low, double? High) Range, string? Region);
 
 /// <summary>One equation for one region and return period.</summary>
 /// <param name="Region">Region name.</param>
@@ -65,7 +64,7 @@ public sealed record RegressionEquationSet(
                 problems.Add(new($"{place}, set {id}, variable {v.Name}", $"the unit '{v.Unit}' for {q.Name}", $"a unit of {q.Dimension}"));
             else if (v.Quantity is { } plain && v.Unit.Length == 0 && plain.Dimension != "slope")
                 problems.Add(new($"{place}, set {id}, variable {v.Name}", $"no unit for {plain.Name}", $"a unit of {plain.Dimension}"));
-            if (v.Low > v.High) problems.Add(new($"{place}, set {id}, variable {v.Name}", $"a range from {v.Low:G6} to {v.High:G6}", "the smaller value first"));
+            if (v.Range.Low > v.Range.High) problems.Add(new($"{place}, set {id}, variable {v.Name}", $"a range from {v.Range.Low:G6} to {v.Range.High:G6}", "the smaller value first"));
         }
         foreach (var e in equations)
         {

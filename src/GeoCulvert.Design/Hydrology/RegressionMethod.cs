@@ -12,8 +12,8 @@ namespace GeoCulvert.Design.Hydrology;
 /// </summary>
 /// <param name="Set">The equations.</param>
 /// <param name="Region">The region.</param>
-/// <param name="Confidence">Probability inside the interval (0.90 by default).</param>
-public sealed record RegressionMethod(RegressionEquationSet Set, string Region, double Confidence = 0.90) : IPeakFlowMethod
+/// <param name="ConfidenceShare">Probability inside the interval (0.90 by default).</param>
+public sealed record RegressionMethod(RegressionEquationSet Set, string Region, double ConfidenceShare = 0.90) : IPeakFlowMethod
 {
     /// <inheritdoc/>
     public string Name => "regression";
@@ -44,10 +44,11 @@ public sealed record RegressionMethod(RegressionEquationSet Set, string Region, 
             if (ValueOf(variable, catchment, out var origin, out var trouble) is not { } value) return PeakFlow.Missing(Name, equation.ReturnPeriodYr, trouble);
             values[name] = value;
             steps.Add(new(name, value, variable.Unit, "", origin));
-            if (variable.Low is null || variable.High is null) withoutRange.Add($"{name} {value:G5} {variable.Unit}".TrimEnd());
-            if (value < variable.Low || value > variable.High)
+            var (low, high) = variable.Range;
+            if (low is null || high is null) withoutRange.Add($"{name} {value:G5} {variable.Unit}".TrimEnd());
+            if (value < low || value > high)
                 findings.Add(HydrologyFindings.RegressionRange.With(
-                    $"{Set.Id}, {Region}: {name} {value:G5} {variable.Unit} against {variable.Low:G5} to {variable.High:G5}", value, value < variable.Low ? variable.Low : variable.High));
+                    $"{Set.Id}, {Region}: {name} {value:G5} {variable.Unit} against {low:G5} to {high:G5}", value, value < low ? low : high));
         }
         if (withoutRange.Count > 0) findings.Add(HydrologyFindings.RegressionRangeUnknown.With($"{Set.Id}, {Region}: {string.Join(", ", withoutRange)}"));
         var printed = equation.Equation.Value(values);
@@ -60,9 +61,9 @@ public sealed record RegressionMethod(RegressionEquationSet Set, string Region, 
             equation.Source.ToString()));
         if (equation.StandardErrorPct is not { } se) return new(Name, equation.ReturnPeriodYr, flow, null, null, steps, findings);
         var sigma = Math.Sqrt(Math.Log(1 + se * se / 1e4));
-        var factor = Math.Exp(Normal.InvCDF(0, 1, (1 + Confidence) / 2) * sigma);
+        var factor = Math.Exp(Normal.InvCDF(0, 1, (1 + ConfidenceShare) / 2) * sigma);
         steps.Add(new("standard_error_pct", se, "%", "", equation.Source.ToString()));
-        steps.Add(new("interval_factor", factor, "", $"exp(z ({Confidence:0.00}) x (ln(1 + {se / 100:0.00}^2))^0.5)", "log-normal errors"));
+        steps.Add(new("interval_factor", factor, "", $"exp(z ({ConfidenceShare:0.00}) x (ln(1 + {se / 100:0.00}^2))^0.5)", "log-normal errors"));
         return new(Name, equation.ReturnPeriodYr, flow, flow / factor, flow * factor, steps, findings);
     }
 

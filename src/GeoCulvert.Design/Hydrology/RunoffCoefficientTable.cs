@@ -32,10 +32,10 @@ public sealed record WeightedCover(string Name, string? SoilGroup, double AreaM2
 /// <summary>An area-weighted runoff coefficient with its lines.</summary>
 /// <param name="Coefficient">The coefficient over the area that has a value; null when none has.</param>
 /// <param name="Lines">The weighting, line by line.</param>
-/// <param name="ShareWithoutValue">Share of the area without a value, 0-1.</param>
+/// <param name="WithoutValueShare">Share of the area without a value, 0-1.</param>
 /// <param name="Findings">Doubts.</param>
 public sealed record CompositeRunoffCoefficient(
-    RunoffCoefficient? Coefficient, IReadOnlyList<WeightedCover> Lines, double ShareWithoutValue, IReadOnlyList<Finding> Findings);
+    RunoffCoefficient? Coefficient, IReadOnlyList<WeightedCover> Lines, double WithoutValueShare, IReadOnlyList<Finding> Findings);
 
 /// <summary>
 /// Runoff coefficients by land cover and soil group, and by slope where the cover's land use is in the finer table. Both are data and

@@ -35,6 +35,19 @@ public class PeakFlowInvariantTests
         Assert.Contains(large.Findings, f => f.Kind == HydrologyFindings.RationalArea);
     }
 
+    // By hand: Ann Arbor at 42 min and 25 yr has 66.000 mm/h (log-log between 81.788 and 52.578); 0.3 x 66.000 x 20 ha / 360 = 1.1000 m3/s.
+    // The steps say every figure of it.
+    [Fact]
+    public void RationalTakesTheIntensityAtTheTimeOfConcentration()
+    {
+        var flow = new RationalMethod().Compute(new("x", 20e4) { RunoffCoefficient = new(0.3, "given") }, 25, new(Table, 42));
+        Assert.Equal(1.1, flow.FlowM3PerS!.Value, 1e-5);
+        Assert.Equal(["area_ha", "runoff_coefficient", "time_of_concentration_min", "intensity_mm_per_h", "flow_m3_s"], flow.Steps.Select(s => s.Name));
+        Assert.Contains("81.79 (30 min, 25 yr: 1.61)", flow.Steps[3].Formula, StringComparison.Ordinal);
+        Assert.Equal("0.300 x 66.00 mm/h x 20.00 ha / 360", flow.Steps[4].Formula);
+        Assert.Empty(flow.Findings);
+    }
+
     [Fact]
     public void FrequencyFactorIsOffByDefaultAndNeverPassesOne()
     {

@@ -25,7 +25,7 @@ public class RainfallOracleTests
     public void EntriesComeBackAsPrinted(string file, double durationMin, double years, double printed, double mmPerH)
     {
         var value = Read(file).Intensity(durationMin, years);
-        Assert.Equal(printed, value.Corners[0].TableValue);
+        Assert.Equal(printed, value.Corners[0].Value);
         Assert.Equal(mmPerH, value.IntensityMmPerH!.Value, 1e-9 * mmPerH);
         Assert.DoesNotContain(value.Findings, f => f.Severity > Severity.Note);
     }

@@ -47,7 +47,7 @@ public class RunoffCoefficientOracleTests
     public void TheShareWithoutAValueIsReported()
     {
         var c = Of(new("41", "B", 60), new("41", null, 10), new("12", "B", 10), new("99", "B", 10), new(null, "B", 10));
-        Assert.Equal(0.4, c.ShareWithoutValue, 1e-12);
+        Assert.Equal(0.4, c.WithoutValueShare, 1e-12);
         Assert.Equal(0.11, c.Coefficient!.Value, 1e-12);
         var finding = Assert.Single(c.Findings);
         Assert.Equal(HydrologyFindings.CoefficientMissing, finding.Kind);
