@@ -188,7 +188,7 @@ public sealed class RainfallTable : IRainfall
         {
             var range = $"{what} {x:G6} {unit} against {first:G6} to {last:G6} {unit} in {Origin}";
             var limit = x < first ? first : last;
-            var annualChanceAboveOne = scale != Math.Log && Series == RainfallSeries.AnnualMaximum && Math.Min(x, first) <= 1;
+            var annualChanceAboveOne = unit == "yr" && Series == RainfallSeries.AnnualMaximum && Math.Min(x, first) <= 1;
             if (nodes.Count < 2 || x < first / ExtensionFactor || x > last * ExtensionFactor || annualChanceAboveOne)
             {
                 findings.Add(HydrologyFindings.RainfallBeyondTable.With(range, x, limit));
