@@ -48,14 +48,14 @@ internal static class Atlas14Reader
                 open = new RainfallCells(name, RainfallCells.ReturnPeriods(name, number, cells.Skip(1).ToList()));
                 blocks.Add((kind, number, open));
             }
-            else if (first.Length > 0 && char.IsAsciiDigit(first[0]))
+            else if (first.Length > 0 && char.IsAsciiDigit(first[0]) && (cells.Count > 1 || RainfallCells.DurationMin(first) is not null))
             {
                 if (open is null)
                     throw new InputException($"{name} line {number}", $"the row '{first}' before any return periods",
                         "a heading row such as 'by duration for ARI (years):,1,2,5,10,25,50,100'");
                 open.Add(number, first, RainfallCells.DurationMin(first), cells.Skip(1).ToList());
             }
-            else open = null;
+            else open = null; // head or footer, a numbered footnote among them
             if (blocks.Count == 0 && line.Length > 0) head.Add(line);
         }
         if (blocks.Count == 0)

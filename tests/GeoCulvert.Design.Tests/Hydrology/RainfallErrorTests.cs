@@ -73,7 +73,7 @@ public class RainfallErrorTests
             + "by duration for AEP:, 1/2,1/10,1/100\r\n5-min:, 8,12,20,,\r\n1-hr:, 24,36,60,,\r\n\r\n"
             + "PRECIPITATION FREQUENCY ESTIMATES: LOWER BOUND OF 90% CONFIDENCE INTERVAL\r\nby duration for AEP:,1/2,1/10,1/100\r\n5-min:,7,10,15\r\n1-hr:,20,30,45\r\n\r\n"
             + "PRECIPITATION FREQUENCY ESTIMATES: UPPER BOUND OF 90% CONFIDENCE INTERVAL\r\nby duration for AEP:,1/2,1/10,1/100\r\n5-min:,9,15,26\r\n1-hr:,28,44,80\r\n\r\n"
-            + "Date/time (GMT):  Sun Jun  7 07:54:20 2026\r\nPyRunTime: 0.01\r\n";
+            + "1 Estimates at some durations rest on few gauges\r\nDate/time (GMT):  Sun Jun  7 07:54:20 2026\r\nPyRunTime: 0.01\r\n";
         var table = RainfallTable.Read("wild.csv", text);
         Assert.Equal((RainfallMeasure.DepthMm, RainfallSeries.AnnualMaximum), (table.Measure, table.Series));
         Assert.Equal(36, table.Intensity(60, 10).IntensityMmPerH!.Value, 1e-9);
