@@ -1,0 +1,201 @@
+using System.Globalization;
+using System.Runtime.InteropServices;
+using NetTopologySuite.Geometries;
+
+namespace GeoCulvert.Layers;
+
+/// <summary>A coordinate reference system. Axis order is always x (east, longitude) then y (north, latitude).</summary>
+public sealed unsafe class Crs : SafeHandle
+{
+    private Crs(nint handle)
+        : base(0, ownsHandle: true)
+    {
+        SetHandle(handle);
+        Native.OSRSetAxisMappingStrategy(handle, 0);
+        IsGeographic = Native.OSRIsGeographic(handle) != 0;
+        IsProjected = Native.OSRIsProjected(handle) != 0;
+        Name = Native.Text(Native.OSRGetName(handle));
+        nint unit = 0;
+        LinearUnitM = IsProjected ? Native.OSRGetLinearUnits(handle, &unit) : 1;
+        LinearUnitName = IsProjected ? Native.Text(unit) : "degree";
+        if (Native.OSRIsCompound(handle) != 0)
+        {
+            nint vertical = 0;
+            VerticalUnitM = Native.OSRGetTargetLinearUnits(handle, "VERT_CS", &vertical);
+        }
+
+        Code = FindCode(handle);
+    }
+
+    /// <inheritdoc/>
+    public override bool IsInvalid => handle == 0;
+
+    /// <summary>Name, "NAD83 / UTM zone 12N".</summary>
+    public string Name { get; }
+
+    /// <summary>Authority code, "EPSG:26912", or "" when it has none.</summary>
+    public string Code { get; }
+
+    /// <summary>Whether coordinates are degrees.</summary>
+    public bool IsGeographic { get; }
+
+    /// <summary>Whether coordinates are lengths in a plane.</summary>
+    public bool IsProjected { get; }
+
+    /// <summary>Size of the horizontal unit, m.</summary>
+    public double LinearUnitM { get; }
+
+    /// <summary>Name of the horizontal unit.</summary>
+    public string LinearUnitName { get; }
+
+    /// <summary>Size of the vertical unit of a compound system, m; null when the system has no vertical part.</summary>
+    public double? VerticalUnitM { get; }
+
+    /// <summary>Well-known text, version 2 of 2019.</summary>
+    public string Wkt
+    {
+        get
+        {
+            nint text = 0;
+            using var options = new NativeList("FORMAT=WKT2_2019");
+            Gdal.Check(Native.OSRExportToWktEx(handle, &text, options.Pointer), "Writing a coordinate system as text");
+            var wkt = Native.Text(text);
+            Native.VSIFree(text);
+            return wkt;
+        }
+    }
+
+    /// <summary>"EPSG:26912 NAD83 / UTM zone 12N".</summary>
+    public string Label => Code.Length > 0 ? $"{Code} {Name}" : Name;
+
+    internal nint Pointer => handle;
+
+    /// <summary>Reads a coordinate system from "EPSG:26912", well-known text or a PROJ string.</summary>
+    /// <exception cref="GdalException">The text is not a coordinate system.</exception>
+    public static Crs Parse(string text)
+    {
+        ArgumentException.ThrowIfNullOrWhiteSpace(text);
+        Gdal.Ensure();
+        Gdal.Clear();
+        var srs = Native.OSRNewSpatialReference(0);
+        if (Native.OSRSetFromUserInput(srs, text) == 0) return new Crs(srs);
+        Native.OSRRelease(srs);
+        throw new GdalException($"'{text}' is not a coordinate system", Gdal.Says());
+    }
+
+    /// <summary>The UTM zone (WGS 84) of a place.</summary>
+    public static Crs UtmFor(double longitudeDeg, double latitudeDeg)
+    {
+        var zone = Math.Clamp((int)Math.Floor((longitudeDeg + 180) / 6) + 1, 1, 60);
+        return Parse(string.Create(CultureInfo.InvariantCulture, $"EPSG:{(latitudeDeg >= 0 ? 32600 : 32700) + zone}"));
+    }
+
+    /// <summary>Whether both are the same system.</summary>
+    public bool IsSameAs(Crs other)
+    {
+        ArgumentNullException.ThrowIfNull(other);
+        return Native.OSRIsSame(handle, other.handle) != 0;
+    }
+
+    internal static Crs? FromBorrowed(nint srs) => srs == 0 ? null : new Crs(Native.OSRClone(srs));
+
+    /// <inheritdoc/>
+    protected override bool ReleaseHandle()
+    {
+        Native.OSRRelease(handle);
+        return true;
+    }
+
+    private static string FindCode(nint srs)
+    {
+        var name = Native.OSRGetAuthorityName(srs, 0);
+        if (name == 0)
+        {
+            // Try to find the code of a system that was written without one; on a copy, since this may change it.
+            var copy = Native.OSRClone(srs);
+            var code = Native.OSRAutoIdentifyEPSG(copy) == 0 ? Code(copy) : "";
+            Native.OSRRelease(copy);
+            Gdal.Clear();
+            return code;
+        }
+
+        return Code(srs);
+
+        static string Code(nint s)
+        {
+            nint authority = Native.OSRGetAuthorityName(s, 0), code = Native.OSRGetAuthorityCode(s, 0);
+            return authority == 0 || code == 0 ? "" : $"{Native.Text(authority)}:{Native.Text(code)}";
+        }
+    }
+}
+
+/// <summary>Moves coordinates from one system to another.</summary>
+public sealed unsafe class CrsTransform : SafeHandle
+{
+    private readonly string _what;
+
+    /// <summary>Creates the transform.</summary>
+    /// <exception cref="GdalException">There is no way between the systems.</exception>
+    public CrsTransform(Crs from, Crs to)
+        : base(0, ownsHandle: true)
+    {
+        ArgumentNullException.ThrowIfNull(from);
+        ArgumentNullException.ThrowIfNull(to);
+        Gdal.Clear();
+        _what = $"From {from.Label} to {to.Label}";
+        SetHandle(Gdal.Check(Native.OCTNewCoordinateTransformation(from.Pointer, to.Pointer), _what));
+    }
+
+    /// <inheritdoc/>
+    public override bool IsInvalid => handle == 0;
+
+    /// <summary>Moves coordinates in place; heights stay.</summary>
+    /// <exception cref="GdalException">A coordinate has no image.</exception>
+    public void Apply(double[] x, double[] y)
+    {
+        ArgumentNullException.ThrowIfNull(x);
+        ArgumentNullException.ThrowIfNull(y);
+        if (x.Length != y.Length) throw new ArgumentException("x and y differ in length.", nameof(y));
+        Gdal.Clear();
+        fixed (double* px = x, py = y)
+        {
+            if (Native.OCTTransform(handle, x.Length, px, py, null) == 0) throw new GdalException(_what, Gdal.Says());
+        }
+    }
+
+    /// <summary>A copy of a geometry with its coordinates moved; z stays.</summary>
+    public Geometry Apply(Geometry geometry)
+    {
+        ArgumentNullException.ThrowIfNull(geometry);
+        var copy = geometry.Copy();
+        copy.Apply(new Moving(this));
+        copy.GeometryChanged();
+        return copy;
+    }
+
+    /// <inheritdoc/>
+    protected override bool ReleaseHandle()
+    {
+        Native.OCTDestroyCoordinateTransformation(handle);
+        return true;
+    }
+
+    private sealed class Moving(CrsTransform transform) : IEntireCoordinateSequenceFilter
+    {
+        public bool Done => false;
+
+        public bool GeometryChanged => true;
+
+        public void Filter(CoordinateSequence s)
+        {
+            double[] x = new double[s.Count], y = new double[s.Count];
+            for (var i = 0; i < s.Count; i++) (x[i], y[i]) = (s.GetX(i), s.GetY(i));
+            transform.Apply(x, y);
+            for (var i = 0; i < s.Count; i++)
+            {
+                s.SetX(i, x[i]);
+                s.SetY(i, y[i]);
+            }
+        }
+    }
+}

@@ -1,0 +1,220 @@
+using System.Globalization;
+using GeoCulvert.Design.Basis;
+using GeoCulvert.Design.Terrain;
+using NetTopologySuite.Geometries;
+
+namespace GeoCulvert.Layers;
+
+/// <summary>What the project says about a terrain model.</summary>
+/// <param name="Crs">Coordinate system, when the file has none.</param>
+/// <param name="WorkingCrs">Projected system to work in; null = the file's own, or the UTM zone of its middle.</param>
+/// <param name="NoData">A further nodata value.</param>
+/// <param name="VerticalUnitM">Unit of the elevations in m, when the file does not say.</param>
+/// <param name="CellSizeM">Cell size after projection; null = the file's own spacing.</param>
+public sealed record ElevationOptions(Crs? Crs = null, Crs? WorkingCrs = null, double? NoData = null, double? VerticalUnitM = null, double? CellSizeM = null);
+
+/// <summary>The plane a run works in: metres, in the directions of a projected system.</summary>
+/// <param name="Crs">The projected system.</param>
+public sealed record WorkingPlane(Crs Crs)
+{
+    /// <summary>A geometry of another system in this plane, m.</summary>
+    public Geometry Into(Geometry geometry, Crs from)
+    {
+        ArgumentNullException.ThrowIfNull(from);
+        var here = geometry;
+        if (!from.IsSameAs(Crs))
+        {
+            using var transform = new CrsTransform(from, Crs);
+            here = transform.Apply(geometry);
+        }
+
+        return Scaled(here, Crs.LinearUnitM);
+    }
+
+    /// <summary>A geometry of this plane in the units of its system.</summary>
+    public Geometry OutOf(Geometry geometry) => Scaled(geometry, 1 / Crs.LinearUnitM);
+
+    private static Geometry Scaled(Geometry geometry, double factor) =>
+        factor == 1 ? geometry : NetTopologySuite.Geometries.Utilities.AffineTransformation.ScaleInstance(factor, factor).Transform(geometry);
+}
+
+/// <summary>A terrain model ready to work on.</summary>
+/// <param name="Elevation">Elevations in m on a north-up grid in m; NaN is nodata.</param>
+/// <param name="Plane">Where the grid lies.</param>
+/// <param name="Findings">What was done to it.</param>
+public sealed record ElevationModel(Grid<float> Elevation, WorkingPlane Plane, IReadOnlyList<Finding> Findings);
+
+/// <summary>Reads terrain models and class rasters onto one grid.</summary>
+public static class ElevationReader
+{
+    private static readonly (string Word, double InM)[] UnitWords =
+    [
+        ("m", 1), ("metre", 1), ("metres", 1), ("meter", 1), ("meters", 1),
+        ("ft", Units.Foot), ("foot", Units.Foot), ("feet", Units.Foot), ("international feet", Units.Foot), ("intl foot", Units.Foot),
+        ("us-ft", Units.SurveyFoot), ("ftus", Units.SurveyFoot), ("us survey foot", Units.SurveyFoot), ("us survey feet", Units.SurveyFoot),
+        ("foot_us", Units.SurveyFoot), ("u.s. survey feet", Units.SurveyFoot),
+    ];
+
+    /// <summary>Reads a terrain model.</summary>
+    /// <param name="source">An open raster.</param>
+    /// <param name="options">What the project says.</param>
+    /// <exception cref="InputException">Everything that is missing or wrong: place, coordinate system, vertical unit.</exception>
+    public static ElevationModel Read(RasterSource source, ElevationOptions options)
+    {
+        ArgumentNullException.ThrowIfNull(source);
+        ArgumentNullException.ThrowIfNull(options);
+        var findings = new List<Finding>();
+        var (crs, verticalM) = Check(source, options, findings);
+        var working = options.WorkingCrs ?? (crs.IsProjected ? crs : Utm(source, crs));
+        var grid = crs.IsProjected && crs.IsSameAs(working) && source.GeoTransform is [_, > 0, 0, _, 0, not 0] && options.CellSizeM is null
+            ? ReadAsItLies(source, options, working)
+            : ReadWarped(source, options, crs, working, findings);
+        if (verticalM != 1)
+        {
+            var factor = (float)verticalM;
+            foreach (ref var z in grid.Cells.AsSpan()) z *= factor;
+        }
+
+        return new ElevationModel(grid, new WorkingPlane(working), findings);
+    }
+
+    /// <summary>Checks what the file and the project say, without reading a cell.</summary>
+    /// <exception cref="InputException">Everything that is missing or wrong.</exception>
+    public static (Crs Crs, double VerticalM) Check(RasterSource source, ElevationOptions options, List<Finding> findings)
+    {
+        ArgumentNullException.ThrowIfNull(source);
+        ArgumentNullException.ThrowIfNull(options);
+        ArgumentNullException.ThrowIfNull(findings);
+        var problems = new List<InputProblem>();
+        if (!source.HasGeoTransform)
+            problems.Add(new InputProblem(source.Path, "no position (the file has no geotransform)", "a georeferenced terrain model"));
+        var crs = source.Crs ?? options.Crs;
+        if (crs is null)
+            problems.Add(new InputProblem(source.Path, "no coordinate system", "a file that says its own, or [terrain] crs in the project file, for example \"EPSG:26912\""));
+        else if (!crs.IsGeographic && !crs.IsProjected)
+            problems.Add(new InputProblem(source.Path, $"the coordinate system {crs.Label}", "a geographic or a projected one"));
+        if (source.Crs is not null && options.Crs is not null && !source.Crs.IsSameAs(options.Crs))
+            findings.Add(LayerFindings.CrsStatedDiffers.With($"{source.Path} says {source.Crs.Label}, the project {options.Crs.Label}; the file's was used"));
+        if (options.WorkingCrs is { IsProjected: false })
+            problems.Add(new InputProblem("[terrain] working_crs", options.WorkingCrs.Label, "a projected coordinate system"));
+
+        var (unit, unknownWord) = FileUnit(source);
+        if (unknownWord is not null && options.VerticalUnitM is null)
+            problems.Add(new InputProblem(source.Path, $"elevations in '{unknownWord}'", "[terrain] vertical_unit in the project file: \"m\", \"ft\" or \"us-ft\""));
+        else if (unit is null && options.VerticalUnitM is null)
+            problems.Add(new InputProblem(source.Path, "no vertical unit", "a file that says its own, or [terrain] vertical_unit in the project file: \"m\", \"ft\" or \"us-ft\"; it is never guessed"));
+        if (unit is { } u && options.VerticalUnitM is { } stated && Math.Abs(u - stated) > 1e-9)
+            findings.Add(LayerFindings.VerticalUnitDiffers.With($"{source.Path} says a unit of {u:0.#######} m, the project one of {stated:0.#######} m; the project's was used", stated, u));
+        if (problems.Count > 0) throw new InputException(problems);
+        return (crs!, options.VerticalUnitM ?? unit!.Value);
+    }
+
+    /// <summary>Reads classes (land cover, soils) onto the grid of a terrain model by the nearest cell; <see cref="int.MinValue"/> where there is none.</summary>
+    public static Grid<int> ReadClasses(RasterSource source, GridFrame frame, WorkingPlane plane)
+    {
+        ArgumentNullException.ThrowIfNull(source);
+        ArgumentNullException.ThrowIfNull(plane);
+        if (source.Crs is null) throw new InputException(source.Path, "no coordinate system", "a raster that says its own");
+        var unit = plane.Crs.LinearUnitM;
+        using var warped = source.Warped(
+            "-t_srs", plane.Crs.Wkt, "-r", "near", "-ot", "Int32", "-dstnodata", "-2147483648",
+            "-te", Say(frame.West / unit), Say(frame.South / unit), Say(frame.East / unit), Say(frame.North / unit),
+            "-ts", Say(frame.Columns), Say(frame.Rows));
+        var grid = new Grid<int>(frame);
+        warped.ReadWindow(0, 0, frame.Columns, frame.Rows, grid.Cells);
+        return grid;
+    }
+
+    private static (double? InM, string? UnknownWord) FileUnit(RasterSource source)
+    {
+        if (source.Crs?.VerticalUnitM is { } compound) return (compound, null);
+        var word = source.UnitName.Trim().ToLowerInvariant();
+        if (word.Length == 0) return (null, null);
+        var known = UnitWords.Where(u => u.Word == word).Select(u => (double?)u.InM).FirstOrDefault();
+        return (known, known is null ? source.UnitName : null);
+    }
+
+    private static Crs Utm(RasterSource source, Crs crs)
+    {
+        var g = source.GeoTransform;
+        double[] x = [g[0] + (g[1] * source.Columns / 2) + (g[2] * source.Rows / 2)], y = [g[3] + (g[4] * source.Columns / 2) + (g[5] * source.Rows / 2)];
+        using var wgs84 = Crs.Parse("EPSG:4326");
+        using var transform = new CrsTransform(crs, wgs84);
+        transform.Apply(x, y);
+        return Crs.UtmFor(x[0], y[0]);
+    }
+
+    private static Grid<float> ReadAsItLies(RasterSource source, ElevationOptions options, Crs crs)
+    {
+        var g = source.GeoTransform;
+        var unit = crs.LinearUnitM;
+        var north = g[5] < 0 ? g[3] : g[3] + (g[5] * source.Rows);
+        var frame = new GridFrame(source.Columns, source.Rows, g[0] * unit, north * unit, g[1] * unit, Math.Abs(g[5]) * unit);
+        var grid = Read(source, options, frame);
+        if (g[5] > 0) FlipRows(grid);
+        return grid;
+    }
+
+    private static Grid<float> ReadWarped(RasterSource source, ElevationOptions options, Crs crs, Crs working, List<Finding> findings)
+    {
+        var arguments = new List<string> { "-s_srs", crs.Wkt, "-t_srs", working.Wkt, "-r", "bilinear", "-ot", "Float32", "-dstnodata", "nan" };
+        if (options.NoData is { } n) arguments.AddRange(["-srcnodata", Say(n)]);
+        if (options.CellSizeM is { } cell) arguments.AddRange(["-tr", Say(cell / working.LinearUnitM), Say(cell / working.LinearUnitM)]);
+        using var warped = source.Warped(arguments);
+        var g = warped.GeoTransform;
+        var unit = working.LinearUnitM;
+        var frame = new GridFrame(warped.Columns, warped.Rows, g[0] * unit, g[3] * unit, g[1] * unit, -g[5] * unit);
+        findings.Add(LayerFindings.Projected.With(
+            string.Create(CultureInfo.InvariantCulture, $"{source.Path} projected from {crs.Label} to {working.Label}, cells of {frame.CellWidthM:0.###} m, bilinear")));
+        return Read(warped, options with { NoData = null }, frame);
+    }
+
+    private static Grid<float> Read(RasterSource source, ElevationOptions options, GridFrame frame)
+    {
+        var grid = new Grid<float>(frame);
+        // In bands of rows: GDAL's own buffers stay small and a damaged file is named by its place.
+        var step = Math.Max(1, (1 << 24) / Math.Max(1, frame.Columns));
+        for (var row = 0; row < frame.Rows; row += step)
+        {
+            var height = Math.Min(step, frame.Rows - row);
+            source.ReadWindow(0, row, frame.Columns, height, grid.Cells.AsSpan(checked(row * frame.Columns), height * frame.Columns), options.NoData);
+        }
+
+        return grid;
+    }
+
+    private static void FlipRows(Grid<float> grid)
+    {
+        var columns = grid.Frame.Columns;
+        var line = new float[columns];
+        for (int top = 0, bottom = grid.Frame.Rows - 1; top < bottom; top++, bottom--)
+        {
+            Span<float> a = grid.Cells.AsSpan(top * columns, columns), b = grid.Cells.AsSpan(bottom * columns, columns);
+            a.CopyTo(line);
+            b.CopyTo(a);
+            line.CopyTo(b);
+        }
+    }
+
+    private static string Say(double value) => value.ToString("R", CultureInfo.InvariantCulture);
+}
+
+/// <summary>Codes of reading and writing maps.</summary>
+public static class LayerFindings
+{
+    /// <summary>The terrain model was projected.</summary>
+    public static readonly FindingCode Projected = new(
+        "terrain-projected", Severity.Note, "The terrain model was resampled into the working coordinate system.", "Name working_crs and cell_size in the project file when others serve better.");
+
+    /// <summary>File and project name different systems.</summary>
+    public static readonly FindingCode CrsStatedDiffers = new(
+        "crs-differs", Severity.Warning, "The file and the project file name different coordinate systems.", "Remove crs from the project file, or mend the file.");
+
+    /// <summary>File and project name different vertical units.</summary>
+    public static readonly FindingCode VerticalUnitDiffers = new(
+        "vertical-unit-differs", Severity.Warning, "The file and the project file name different vertical units.", "Check the elevations of a known place before relying on any result.");
+
+    /// <summary>A feature could not be used.</summary>
+    public static readonly FindingCode FeatureLeftOut = new(
+        "feature-left-out", Severity.Warning, "A feature of an input layer could not be used and was left out.", "Mend the feature in its file.");
+}
