@@ -1,0 +1,31 @@
+using GeoCulvert.Design.Basis;
+
+namespace GeoCulvert.Design.Hydraulics;
+
+/// <summary>Codes of the hydraulics room.</summary>
+public static class HydraulicsFindings
+{
+    /// <summary>HW/D above the charts.</summary>
+    public static readonly FindingCode HeadwaterExtrapolated = new(
+        "headwater-extrapolated", Severity.Warning, "Headwater is more than three times the rise, beyond the published inlet-control charts.", "Use a larger barrel, or check the inlet by another method.");
+
+    /// <summary>Inlet and outlet control nearly equal.</summary>
+    public static readonly FindingCode ControlNearTie = new(
+        "control-near-tie", Severity.Note, "Inlet and outlet control give nearly the same headwater.", "A small change of inlet, length or tailwater moves the control; check both.");
+
+    /// <summary>Road overtopped.</summary>
+    public static readonly FindingCode RoadOvertopped = new(
+        "road-overtopped", Severity.Warning, "Water flows over the road.", "Check depth and velocity on the road against what traffic and embankment bear.");
+
+    /// <summary>Shorthand outside its range.</summary>
+    public static readonly FindingCode ShorthandOutOfRange = new(
+        "shorthand-out-of-range", Severity.Note, "The shorthand for outlet control lies below 0.75 of the rise, where it may not be used.", "Rely on the water-surface profile.");
+
+    /// <summary>Barrel rises.</summary>
+    public static readonly FindingCode AdverseBarrel = new(
+        "barrel-adverse", Severity.Warning, "The barrel rises from inlet to outlet.", "Check the inverts; a culvert that rises silts up.");
+
+    /// <summary>Tapered inlet.</summary>
+    public static readonly FindingCode ThroatOnly = new(
+        "throat-control-only", Severity.Warning, "Inlet control was computed at the throat of a tapered inlet; its face was not checked.", "Check the face of the inlet with its own dimensions.");
+}

@@ -1,0 +1,104 @@
+using GeoCulvert.Design.Basis;
+
+namespace GeoCulvert.Design.Hydraulics;
+
+/// <summary>Surface of a road, for its discharge coefficient.</summary>
+public enum RoadSurface
+{
+    /// <summary>Paved.</summary>
+    Paved,
+
+    /// <summary>Gravel.</summary>
+    Gravel,
+}
+
+/// <summary>The road as a weir: its profile across the flow.</summary>
+/// <param name="Profile">Station along the road and crest elevation, m; rising stations, two points or more.</param>
+/// <param name="WidthM">Width of the road along the flow, m.</param>
+/// <param name="Surface">Surface.</param>
+public sealed record RoadCrest(IReadOnlyList<(double StationM, double ElevationM)> Profile, double WidthM, RoadSurface Surface)
+{
+    /// <summary>Lowest crest level, m.</summary>
+    public double LowestM { get; } = Profile.Min(p => p.ElevationM);
+
+    /// <summary>A level road.</summary>
+    public static RoadCrest Level(double elevationM, double lengthM, double widthM, RoadSurface surface) =>
+        new([(0, elevationM), (lengthM, elevationM)], widthM, surface);
+}
+
+/// <summary>
+/// Flow over a road as over a broad-crested weir (FHWA HDS-5, 2nd ed., ch. III, eq. 8): Q = kt Cr L HWr^1.5, summed over strips of the profile.
+/// Cr and kt are read from tables whose status is MEMORY (within 3 % of the published chart); US unit of Cr times 0.552 is SI.
+/// </summary>
+public static class RoadOvertopping
+{
+    private const double UsToSi = 0.552;
+    private const double DeepFromRatio = 0.15;
+    private static readonly Dictionary<(string Curve, RoadSurface Surface), (double[] X, double[] Value)> Curves = Read(
+        PublishedTable.Embedded("Hydraulics/Tables/road_overtopping.csv"));
+
+    /// <summary>Source of the coefficients, with its status.</summary>
+    public static Source Source { get; } = PublishedTable.Embedded("Hydraulics/Tables/road_overtopping.csv").Rows[0].Source;
+
+    /// <summary>Discharge coefficient Cr, US unit, for a head over the road.</summary>
+    /// <param name="headM">Head HWr, m.</param>
+    /// <param name="widthM">Road width Lr along the flow, m.</param>
+    /// <param name="surface">Surface.</param>
+    public static double CoefficientUs(double headM, double widthM, RoadSurface surface)
+    {
+        var ratio = headM / widthM;
+        var shallow = At("shallow", surface, Math.Min(headM, DeepFromRatio * widthM) / Units.Foot);
+        // The two published curves do not meet exactly; the larger keeps flow rising with head.
+        return ratio <= DeepFromRatio ? shallow : Math.Max(shallow, At("deep", surface, ratio));
+    }
+
+    /// <summary>Submergence factor kt for the ratio of tailwater to headwater above the crest.</summary>
+    public static double SubmergenceFactor(double ratio, RoadSurface surface) => At("submergence", surface, Math.Clamp(ratio, 0, 1));
+
+    /// <summary>Flow over the road, m3/s.</summary>
+    /// <param name="crest">Road.</param>
+    /// <param name="headwaterM">Headwater elevation, m.</param>
+    /// <param name="tailwaterM">Tailwater elevation, m.</param>
+    public static double FlowM3PerS(RoadCrest crest, double headwaterM, double tailwaterM)
+    {
+        ArgumentNullException.ThrowIfNull(crest);
+        if (headwaterM <= crest.LowestM) return 0;
+        var flow = 0.0;
+        for (var i = 1; i < crest.Profile.Count; i++)
+        {
+            var (s0, z0) = crest.Profile[i - 1];
+            var (s1, z1) = crest.Profile[i];
+            if (z0 > z1) (s0, z0, s1, z1) = (s1, z1, s0, z0);
+            if (headwaterM <= z0 || s0 == s1) continue;
+            // The wet part of the segment in strips of even width, each at its middle level.
+            var wet = z1 > headwaterM ? (headwaterM - z0) / (z1 - z0) : 1;
+            var length = Math.Abs(s1 - s0) * wet;
+            var strips = z0 == z1 ? 1 : 16;
+            for (var k = 0; k < strips; k++)
+            {
+                var z = z0 + ((z1 - z0) * wet * (k + 0.5) / strips);
+                var head = headwaterM - z;
+                var kt = tailwaterM > z ? SubmergenceFactor((tailwaterM - z) / head, crest.Surface) : 1;
+                flow += kt * UsToSi * CoefficientUs(head, crest.WidthM, crest.Surface) * length / strips * head * Math.Sqrt(head);
+            }
+        }
+
+        return flow;
+    }
+
+    private static double At(string curve, RoadSurface surface, double x)
+    {
+        var (xs, values) = Curves[(curve, surface)];
+        if (x <= xs[0]) return values[0];
+        for (var i = 1; i < xs.Length; i++)
+        {
+            if (x <= xs[i]) return values[i - 1] + ((values[i] - values[i - 1]) * (x - xs[i - 1]) / (xs[i] - xs[i - 1]));
+        }
+
+        return values[^1];
+    }
+
+    private static Dictionary<(string, RoadSurface), (double[], double[])> Read(PublishedTable table) => table.Rows
+        .GroupBy(r => (r.Text("curve"), r.Text("surface") == "paved" ? RoadSurface.Paved : RoadSurface.Gravel))
+        .ToDictionary(g => g.Key, g => (g.Select(r => r.Number("x")).ToArray(), g.Select(r => r.Number("value")).ToArray()));
+}
