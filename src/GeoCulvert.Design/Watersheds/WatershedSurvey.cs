@@ -1,0 +1,94 @@
+using GeoCulvert.Design.Basis;
+using GeoCulvert.Design.Terrain;
+using NetTopologySuite.Geometries;
+
+namespace GeoCulvert.Design.Watersheds;
+
+/// <summary>Settings of the survey of watersheds.</summary>
+public sealed record WatershedSettings
+{
+    /// <summary>Share of the perimeter without terrain beyond it above which the area is called a lower bound. Default 0: any contact.</summary>
+    public double EdgeContactLimitShare { get; init; }
+
+    /// <summary>Fewer cells than this are called few. Default 50 (own rule).</summary>
+    public int FewCells { get; init; } = 50;
+
+    /// <summary>Share of cells in filled depressions above which storage is mentioned. Default 0.01 (own rule).</summary>
+    public double StorageLimitShare { get; init; } = 0.01;
+}
+
+/// <summary>
+/// Surveys all watersheds of a run together: each cell is read once for its local watershed, and totals are added up along the tree of outlets.
+/// </summary>
+public static class WatershedSurvey
+{
+    /// <summary>Surveys local and total watersheds of all outlets.</summary>
+    /// <param name="labels">0 for none, k + 1 for outlet k.</param>
+    /// <param name="parent">The next outlet downstream of each; negative for none.</param>
+    /// <param name="elevation">The untouched terrain; NaN where there is none.</param>
+    /// <param name="totalPath">Cells of the longest flow path of an outlet's total watershed, divide first; null or empty for none.</param>
+    /// <param name="localPath">The same within the local watershed; null to leave it out.</param>
+    /// <param name="filledDepthM">Depth to which conditioning raised each cell, m; null when not known.</param>
+    /// <param name="settings">Settings; null for the defaults.</param>
+    public static IReadOnlyList<Watershed> Survey(
+        Grid<int> labels,
+        IReadOnlyList<int> parent,
+        Grid<float> elevation,
+        Func<int, IReadOnlyList<int>?>? totalPath = null,
+        Func<int, IReadOnlyList<int>?>? localPath = null,
+        Grid<float>? filledDepthM = null,
+        WatershedSettings? settings = null)
+    {
+        ArgumentNullException.ThrowIfNull(labels);
+        ArgumentNullException.ThrowIfNull(elevation);
+        settings ??= new();
+        var tree = new OutletTree(parent);
+        var frame = labels.Frame;
+        var outlines = WatershedPolygons.Trace(labels, tree, cell => !float.IsNaN(elevation.Cells[cell]));
+        var heights = ZonalSums.Of(labels, tree, elevation);
+        var slopes = ZonalSums.Of(labels, tree, cell => GroundSlope.At(elevation, cell));
+        var columns = ZonalSums.Of(labels, tree, cell => cell % frame.Columns);
+        var rows = ZonalSums.Of(labels, tree, cell => cell / frame.Columns);
+        var filled = filledDepthM is null ? null : ZonalSums.Of(labels, tree, cell => filledDepthM.Cells[cell] > 0 ? 1 : 0);
+        var watersheds = new Watershed[tree.Count];
+        for (var k = 0; k < tree.Count; k++)
+        {
+            var local = Characteristics(b => b.Local[k], outlines.Local[k], localPath?.Invoke(k));
+            var total = Characteristics(b => b.Total[k], outlines.Total[k], totalPath?.Invoke(k));
+            watersheds[k] = new(k, tree.Parent(k), local, total, Doubts(total, filled?.Total[k].MeanOrNull, settings));
+        }
+
+        return watersheds;
+
+        WatershedCharacteristics Characteristics(Func<ByOutlet<ZoneSum>, ZoneSum> of, WatershedOutline outline, IReadOnlyList<int>? path)
+        {
+            var height = of(heights);
+            var some = height.ValueCells > 0;
+            return new(height.Cells * frame.CellAreaM2, height.Cells, outline)
+            {
+                Centroid = height.Cells > 0
+                    ? new Coordinate(frame.West + ((of(columns).Sum / height.Cells + 0.5) * frame.CellWidthM), frame.North - ((of(rows).Sum / height.Cells + 0.5) * frame.CellHeightM))
+                    : null,
+                LongestFlowPath = path is { Count: > 0 } ? FlowPath.Of(path, elevation) : null,
+                MeanElevationM = height.MeanOrNull,
+                LeastElevationM = some ? height.Least : null,
+                LargestElevationM = some ? height.Most : null,
+                MeanBasinSlopeMPerM = of(slopes).MeanOrNull,
+            };
+        }
+    }
+
+    private static List<Finding> Doubts(WatershedCharacteristics total, double? filledShare, WatershedSettings settings)
+    {
+        var doubts = new List<Finding>();
+        if (total.Outline.EdgeContactM > 0 && total.EdgeContactShare > settings.EdgeContactLimitShare)
+            doubts.Add(WatershedFindings.EdgeContact.With(
+                $"{total.EdgeContactShare * 100:0.#} % of the boundary ({total.Outline.EdgeContactM:0} m) has no terrain beyond it", total.EdgeContactShare, settings.EdgeContactLimitShare));
+        if (total.Cells < settings.FewCells) doubts.Add(WatershedFindings.Tiny.With($"{total.Cells} cells", total.Cells, settings.FewCells));
+        if (filledShare > settings.StorageLimitShare)
+            doubts.Add(WatershedFindings.Storage.With($"{filledShare.Value * 100:0.#} % of the cells lie in filled depressions", filledShare, settings.StorageLimitShare));
+        if (total.LongestFlowPath is { Slope1085MPerM: <= 0 and var slope })
+            doubts.Add(WatershedFindings.FlowPathAdverse.With($"slope {slope:0.00000} m/m", slope, 0));
+        return doubts;
+    }
+}
