@@ -59,6 +59,12 @@ public static class CrossingFindings
         "The flow meets the road at a skew above the limit.",
         "Check the culvert's line and length on the map; consider realigning the channel.");
 
+    /// <summary>The barrel is less skewed than the flow.</summary>
+    public static readonly FindingCode SkewTurned = new(
+        "barrel-turned", Severity.Warning,
+        "The flow is more oblique than a barrel is laid; the barrel was turned towards the perpendicular.",
+        "Lay out the channel at both ends, or give the skew and the length.");
+
     /// <summary>No road near a given point.</summary>
     public static readonly FindingCode NoRoadInReach = new(
         "no-road-in-reach", Severity.Warning,
