@@ -1,4 +1,5 @@
 using GeoCulvert.Design.Terrain;
+using NetTopologySuite.Algorithm;
 using NetTopologySuite.Geometries;
 
 namespace GeoCulvert.Design.Crossings;
@@ -7,13 +8,12 @@ namespace GeoCulvert.Design.Crossings;
 /// <param name="Cell">The upstream cell of the step.</param>
 /// <param name="StationM">Station of the meeting, m.</param>
 /// <param name="Point">The meeting.</param>
-/// <param name="AlongStepShare">How far along the step it lies, 0-1.</param>
-internal readonly record struct RoadMeeting(int Cell, double StationM, Coordinate Point, double AlongStepShare);
+internal readonly record struct RoadMeeting(int Cell, double StationM, Coordinate Point);
 
 /// <summary>Finds the meetings of D8 steps with a road; the work grows with the length of the road, not with the size of the terrain.</summary>
 internal static class RoadMeetings
 {
-    private const double Touch = 1e-9;
+    private const double Parallel = 1e-12;
 
     /// <summary>Meetings of the steps of all cells that <paramref name="isStream"/> accepts, by station; one per step.</summary>
     public static List<RoadMeeting> Find(RoadAlignment road, Grid<byte> direction, Func<int, bool> isStream)
@@ -49,23 +49,23 @@ internal static class RoadMeetings
         var next = FlowSteps.Downstream(direction, cell);
         if (next < 0) return null;
         Coordinate a = FlowSteps.Centre(direction.Frame, cell), b = FlowSteps.Centre(direction.Frame, next);
+        // Whether they meet is decided without rounding error; where, in plain arithmetic held within both.
+        var meet = new RobustLineIntersector();
+        meet.ComputeIntersection(a, b, s.From, s.To);
+        if (!meet.HasIntersection) return null;
         double rx = b.X - a.X, ry = b.Y - a.Y, sx = s.To.X - s.From.X, sy = s.To.Y - s.From.Y;
         double qx = s.From.X - a.X, qy = s.From.Y - a.Y;
         var cross = (rx * sy) - (ry * sx);
         double rr = (rx * rx) + (ry * ry), ss = (sx * sx) + (sy * sy);
-        if (Math.Abs(cross) > Touch * Math.Sqrt(rr * ss))
+        if (meet.IntersectionNum == 1 && Math.Abs(cross) > Parallel * Math.Sqrt(rr * ss))
         {
-            double t = ((qx * sy) - (qy * sx)) / cross, u = ((qx * ry) - (qy * rx)) / cross;
-            if (t is < -Touch or > 1 + Touch || u is < -Touch or > 1 + Touch) return null;
-            return new(cell, s.StationAt(Math.Clamp(u, 0, 1)), s.At(Math.Clamp(u, 0, 1)), Math.Clamp(t, 0, 1));
+            var u = Math.Clamp(((qx * ry) - (qy * rx)) / cross, 0, 1);
+            return new(cell, s.StationAt(u), s.At(u));
         }
 
-        // Parallel: they meet only when the segment lies on the step's line.
-        if (Math.Abs((qx * ry) - (qy * rx)) > Touch * rr) return null;
+        // They run together: the end of the overlap that lies farthest along the step.
         double t0 = ((qx * rx) + (qy * ry)) / rr, t1 = t0 + (((sx * rx) + (sy * ry)) / rr);
-        double low = Math.Max(0, Math.Min(t0, t1)), high = Math.Min(1, Math.Max(t0, t1));
-        if (low > high) return null;
-        var at = Math.Clamp((high - t0) / (t1 - t0), 0, 1);
-        return new(cell, s.StationAt(at), s.At(at), high);
+        var at = t1 == t0 ? 0 : Math.Clamp((Math.Min(1, Math.Max(t0, t1)) - t0) / (t1 - t0), 0, 1);
+        return new(cell, s.StationAt(at), s.At(at));
     }
 }

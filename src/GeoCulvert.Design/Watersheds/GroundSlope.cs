@@ -9,8 +9,8 @@ namespace GeoCulvert.Design.Watersheds;
 ///   d e f    dz/dy = ((a + 2b + c) - (g + 2h + i)) / (8 dy)
 ///   g h i    slope = sqrt((dz/dx)^2 + (dz/dy)^2), m/m
 /// </code>
-/// A neighbour without terrain is replaced by the plane through the opposite neighbour and the cell, 2e - opposite, or by e when that
-/// one is missing too (own rule): a plane keeps its slope up to the edge.
+/// A missing neighbour across a side is 2e less the opposite one, or e when that is missing too; a missing one across a corner is the sum of its two
+/// side neighbours less e (own rule): a plane keeps its slope up to the edge.
 /// </summary>
 public static class GroundSlope
 {
@@ -23,15 +23,20 @@ public static class GroundSlope
         double e = elevation.Cells[cell];
         if (double.IsNaN(e)) return double.NaN;
         double Raw(int r, int c) => frame.Contains(row + r, column + c) ? elevation[row + r, column + c] : double.NaN;
-        double Z(int r, int c)
+        double Side(int r, int c)
         {
-            var z = Raw(r, c);
-            if (!double.IsNaN(z)) return z;
-            var opposite = Raw(-r, -c);
-            return double.IsNaN(opposite) ? e : (2 * e) - opposite;
+            double z = Raw(r, c), opposite = Raw(-r, -c);
+            return !double.IsNaN(z) ? z : double.IsNaN(opposite) ? e : (2 * e) - opposite;
         }
 
-        double a = Z(-1, -1), b = Z(-1, 0), c = Z(-1, 1), d = Z(0, -1), f = Z(0, 1), g = Z(1, -1), h = Z(1, 0), i = Z(1, 1);
+        double b = Side(-1, 0), d = Side(0, -1), f = Side(0, 1), h = Side(1, 0);
+        double Corner(int r, int c)
+        {
+            var z = Raw(r, c);
+            return !double.IsNaN(z) ? z : (r < 0 ? b : h) + (c < 0 ? d : f) - e;
+        }
+
+        double a = Corner(-1, -1), c = Corner(-1, 1), g = Corner(1, -1), i = Corner(1, 1);
         var dx = (c + (2 * f) + i - (a + (2 * d) + g)) / (8 * frame.CellWidthM);
         var dy = (a + (2 * b) + c - (g + (2 * h) + i)) / (8 * frame.CellHeightM);
         return Math.Sqrt((dx * dx) + (dy * dy));

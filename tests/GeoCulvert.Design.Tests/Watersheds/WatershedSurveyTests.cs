@@ -1,0 +1,60 @@
+using GeoCulvert.Design.Terrain;
+using GeoCulvert.Design.Watersheds;
+
+namespace GeoCulvert.Design.Tests.Watersheds;
+
+/// <summary>Two nested watersheds on a plane, by hand.</summary>
+public class WatershedSurveyTests
+{
+    private static readonly GridFrame Frame = new(6, 6, 0, 60, 10, 10);
+
+    private static IReadOnlyList<Watershed> Survey()
+    {
+        // A 4 x 4 block inside a rim: outlet 0 has its two northern rows, outlet 1 the two southern ones. Plane falling south at 10 %.
+        var labels = new Grid<int>(Frame);
+        var elevation = new Grid<float>(Frame);
+        for (var row = 0; row < 6; row++)
+            for (var column = 0; column < 6; column++)
+            {
+                elevation[row, column] = 10 - row;
+                if (row is >= 1 and <= 4 && column is >= 1 and <= 4) labels[row, column] = row <= 2 ? 1 : 2;
+            }
+
+        return WatershedSurvey.Survey(labels, [1, -1], elevation, k => k == 1 ? [8, 14, 20, 26] : [8, 14]);
+    }
+
+    [Fact]
+    public void FiguresOfLocalAndTotal()
+    {
+        var below = Survey()[1];
+        Assert.Equal((800.0, 1600.0), (below.Local.AreaM2, below.Total.AreaM2));
+        Assert.Equal((120.0, 160.0), (below.Local.Outline.PerimeterM, below.Total.Outline.PerimeterM));
+        Assert.Equal((9.0, 6.0, 3.0, 7.5), (below.Total.LargestElevationM, below.Total.LeastElevationM, below.Total.ReliefM, below.Total.MeanElevationM));
+        Assert.Equal(6.5, below.Local.MeanElevationM);
+        Assert.Equal(0.1, below.Total.MeanBasinSlopeMPerM!.Value, 9);
+        Assert.Equal((30.0, 30.0), (below.Total.Centroid!.X, below.Total.Centroid.Y));
+        Assert.Equal(20, below.Local.Centroid!.Y, 9);
+        Assert.Equal(900.0 / 1600, below.Total.ShapeFactor!.Value, 9);
+        Assert.Equal(0, below.Total.EdgeContactShare);
+        Assert.Equal(["watershed-tiny"], below.Findings.Select(f => f.Code));
+        Assert.Equal(0.1, below.Total.LongestFlowPath!.Slope1085MPerM!.Value, 6);
+    }
+
+    [Fact]
+    public void TheTotalOutlineHasNoInnerLineButKeepsItsEnds()
+    {
+        // Four corners, the closing point, and the two ends of the line between the parts (y = 30), which all three outlines share.
+        var polygon = Survey()[1].Total.Outline.Polygon;
+        Assert.Equal(7, polygon.NumPoints);
+        Assert.Equal(2, polygon.Coordinates.Count(c => c.Y == 30));
+    }
+
+    [Fact]
+    public void ContactWithTheEdgeIsSaid()
+    {
+        var labels = new Grid<int>(Frame, [.. Enumerable.Repeat(1, 36)]);
+        var all = WatershedSurvey.Survey(labels, [-1], new Grid<float>(Frame))[0];
+        Assert.Equal(1, all.Total.EdgeContactShare);
+        Assert.Contains(all.Findings, f => f.Code == "watershed-edge-contact" && f.Value == 1);
+    }
+}
