@@ -8,20 +8,17 @@ namespace GeoCulvert.Design.Crossings;
 /// </summary>
 internal static class FlowSteps
 {
-    private static readonly int[] RowStep = [0, -1, -1, 0, 1, 1, 1, 0, -1];
-    private static readonly int[] ColumnStep = [0, 0, 1, 1, 1, 0, -1, -1, -1];
-
     /// <summary>The cell that a cell drains to; -1 where it drains to none or out of the grid.</summary>
     public static int Downstream(Grid<byte> direction, int cell)
     {
         var d = direction.Cells[cell];
-        return d is 0 or > 8 ? -1 : Neighbour(direction.Frame, cell, d);
+        return d == D8.None ? -1 : Neighbour(direction.Frame, cell, d);
     }
 
     /// <summary>The neighbour in a direction 1..8; -1 outside the grid.</summary>
     public static int Neighbour(GridFrame frame, int cell, int d)
     {
-        int row = (cell / frame.Columns) + RowStep[d], column = (cell % frame.Columns) + ColumnStep[d];
+        int row = (cell / frame.Columns) + D8.RowStep[d], column = (cell % frame.Columns) + D8.ColumnStep[d];
         return frame.Contains(row, column) ? (row * frame.Columns) + column : -1;
     }
 
@@ -32,7 +29,7 @@ internal static class FlowSteps
         for (var d = 1; d <= 8; d++)
         {
             var n = Neighbour(direction.Frame, cell, d);
-            if (n < 0 || direction.Cells[n] != (d > 4 ? d - 4 : d + 4)) continue;
+            if (n < 0 || direction.Cells[n] != D8.Opposite((byte)d)) continue;
             if (best < 0 || accumulation.Cells[n] > accumulation.Cells[best]) best = n;
         }
 

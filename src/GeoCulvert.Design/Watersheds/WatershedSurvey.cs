@@ -1,4 +1,5 @@
 using GeoCulvert.Design.Basis;
+using GeoCulvert.Design.Crossings;
 using GeoCulvert.Design.Terrain;
 using NetTopologySuite.Geometries;
 
@@ -17,11 +18,40 @@ public sealed record WatershedSettings
     public double StorageLimitShare { get; init; } = 0.01;
 }
 
+/// <summary>The watersheds of crossings with the labels behind them, for further sums with <see cref="ZonalSums"/> by <see cref="Watershed.Outlet"/>.</summary>
+/// <param name="Labels">0 for none, k + 1 for outlet k.</param>
+/// <param name="Tree">The outlets' tree.</param>
+/// <param name="Watersheds">One for each crossing, in their order.</param>
+public sealed record CrossingWatersheds(Grid<int> Labels, OutletTree Tree, IReadOnlyList<Watershed> Watersheds);
+
 /// <summary>
 /// Surveys all watersheds of a run together: each cell is read once for its local watershed, and totals are added up along the tree of outlets.
 /// </summary>
 public static class WatershedSurvey
 {
+    /// <summary>
+    /// Surveys the watersheds of crossings, in their order; findings carry the crossing's id. Crossings on one cell have one watershed between them.
+    /// </summary>
+    /// <param name="terrain">The terrain, drained.</param>
+    /// <param name="crossings">Crossings on it.</param>
+    /// <param name="settings">Settings; null for the defaults.</param>
+    public static CrossingWatersheds Survey(DrainedTerrain terrain, IReadOnlyList<Crossing> crossings, WatershedSettings? settings = null)
+    {
+        ArgumentNullException.ThrowIfNull(terrain);
+        ArgumentNullException.ThrowIfNull(crossings);
+        var cells = crossings.Select(c => c.OutletCell).Distinct().ToArray();
+        var labelling = WatershedLabels.Label(terrain.Direction, cells);
+        var paths = LongestFlowPath.Trace(terrain.Direction, cells);
+        var depth = new Grid<float>(terrain.Elevation.Frame);
+        for (var i = 0; i < depth.Cells.Length; i++) depth.Cells[i] = terrain.Filled.Surface.Cells[i] - terrain.Elevation.Cells[i];
+        var byOutlet = Survey(labelling.Labels, labelling.Parent, terrain.Elevation, k => paths[k], filledDepthM: depth, settings: settings);
+        var outletOf = cells.Select((cell, k) => (cell, k)).ToDictionary(p => p.cell, p => p.k);
+        return new(
+            labelling.Labels,
+            new OutletTree(labelling.Parent),
+            [.. crossings.Select(c => At(byOutlet[outletOf[c.OutletCell]], c.Id))]);
+    }
+
     /// <summary>Surveys local and total watersheds of all outlets.</summary>
     /// <param name="labels">0 for none, k + 1 for outlet k.</param>
     /// <param name="parent">The next outlet downstream of each; negative for none.</param>
@@ -77,6 +107,8 @@ public static class WatershedSurvey
             };
         }
     }
+
+    private static Watershed At(Watershed watershed, string id) => watershed with { Findings = [.. watershed.Findings.Select(f => f.At(id))] };
 
     private static List<Finding> Doubts(WatershedCharacteristics total, double? filledShare, WatershedSettings settings)
     {
