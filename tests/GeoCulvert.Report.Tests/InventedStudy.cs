@@ -17,6 +17,8 @@ internal static class InventedStudy
     private const int Columns = 620;
     private const int Rows = 470;
 
+    private static readonly Lazy<Grid<float>> Land = new(Relief);
+
     private static readonly FindingCode Edge = new("edge-contact", Severity.Warning, "The watershed touches the edge.", "Get terrain beyond the edge, or give the area.");
     private static readonly FindingCode NoFit = new("no-size-fits", Severity.Error, "No size fits.", "Raise the road, allow more headwater or give another shape.");
     private static readonly FindingCode Assumed = new("tailwater-assumed", Severity.Note, "The tailwater is assumed.", "Survey the channel below the outlet.");
@@ -44,7 +46,7 @@ internal static class InventedStudy
             CrsName = "EPSG:26912 (invented place)",
             Version = "0.1.0",
             RunDate = "2026-01-31",
-            Relief = Relief(),
+            Relief = Land.Value,
             Layers = [.. Layers(items, units, name)],
             Sheets = [.. items.Select(Sheet)],
             Findings = [.. items.SelectMany(i => i.Findings), Datum.With("The terrain states no vertical datum; the road profile is taken to share it.")],

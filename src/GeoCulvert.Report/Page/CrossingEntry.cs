@@ -22,7 +22,10 @@ internal sealed record CrossingEntry(int Index, string Id, ResultRow? Row, Cross
 
     public bool HasNoCulvert => Status is not ("sized" or "rated");
 
-    public bool NeedsLook => HasNoCulvert || Findings.Any(f => f.Severity >= Severity.Warning) || Headwater is { Level: { } h, Limit: { } l } && h > l;
+    /// <summary>Whether a criterion is broken: one of the sheet's, or the headwater above its limit.</summary>
+    public bool IsBroken => Sheet?.Criteria.Any(c => !c.IsMet) == true || (Headwater is { Level: { } h, Limit: { } l } && h > l);
+
+    public bool NeedsLook => HasNoCulvert || IsBroken || Findings.Any(f => f.Severity >= Severity.Warning);
 
     public int Count(Severity severity) => Findings.Count(f => f.Severity == severity);
 
@@ -61,11 +64,11 @@ internal sealed record CrossingEntry(int Index, string Id, ResultRow? Row, Cross
         }
     }
 
-    /// <summary>Worst first: no culvert, then broken headwater limit, errors, warnings, the smallest margin below the limit.</summary>
+    /// <summary>Worst first: no culvert, then errors, broken criteria, warnings, the smallest margin below the limit.</summary>
     public static IEnumerable<CrossingEntry> WorstFirst(IEnumerable<CrossingEntry> entries) => entries
         .OrderByDescending(e => e.HasNoCulvert)
         .ThenByDescending(e => e.Count(Severity.Error))
-        .ThenByDescending(e => e.Headwater is { Level: { } h, Limit: { } l } && h > l)
+        .ThenByDescending(e => e.IsBroken)
         .ThenByDescending(e => e.Count(Severity.Warning))
         .ThenBy(e => e.Headwater is { Level: { } h, Limit: { } l } ? l - h : double.PositiveInfinity)
         .ThenBy(e => e.Index);

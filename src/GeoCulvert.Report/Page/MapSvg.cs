@@ -51,7 +51,7 @@ internal sealed class MapSvg
         DrawWatersheds();
         DrawStreams();
         DrawFlowPaths();
-        RoadLines.Append(svg, report, path);
+        RoadLines.Append(svg, report, path, [.. entries.Select(e => e.Row?.Geometry?.Coordinate).OfType<Coordinate>()]);
         DrawBarrels();
         DrawMarkers();
         svg.Append("<g id=\"furniture\" aria-hidden=\"true\"></g></svg>");
@@ -155,7 +155,7 @@ internal sealed class MapSvg
             var flow = entry.DesignFlow is null ? "" : FigureText.Round(entry.DesignFlow, QuantityKind.Flow) + " " + flowUnit;
             svg.Append("<g class=\"m ").Append(style).Append("\" data-c=\"").Append(entry.Index).Append("\" transform=\"translate(").Append(x).Append(' ').Append(y)
                 .Append(")\"><g class=\"k\"><title>").Append(HtmlText.Escape($"{HtmlText.Shorten(entry.Id, 80)}: {HtmlText.Shorten(culvert, 80)} {flow}")).Append("</title><path d=\"").Append(shape)
-                .Append("\"/><text class=\"lb\"><tspan class=\"id\" x=\"11\" y=\"-2\">").Append(HtmlText.Escape(HtmlText.Shorten(entry.Id, 24))).Append("</tspan><tspan x=\"11\" y=\"11\">")
+                .Append("\"/><text class=\"lb\"><tspan class=\"id\" x=\"11\" y=\"-2\">").Append(HtmlText.Escape(HtmlText.Shorten(entry.Id, 24))).Append("</tspan><tspan class=\"full\" x=\"11\" y=\"11\">")
                 .Append(HtmlText.Escape(HtmlText.Shorten(culvert, 36))).Append(flow.Length > 0 ? ", " : "").Append(flow).Append("</tspan></text></g></g>");
         }
         svg.Append("</g>");

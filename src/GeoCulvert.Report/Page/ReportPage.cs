@@ -64,9 +64,13 @@ public static class ReportPage
         Count(entries.Count, entries.Count == 1 ? "crossing" : "crossings", "");
         foreach (var group in entries.GroupBy(e => e.Status, StringComparer.Ordinal).OrderBy(g => g.Key, StringComparer.Ordinal))
             Count(group.Count(), group.Key, group.First().HasNoCulvert ? "bad" : "");
-        Count(entries.Count(e => e.NeedsLook), "need a look first", "look");
+        var look = entries.Count(e => e.NeedsLook);
+        Count(look, look == 1 ? "needs a look first" : "need a look first", "look");
         foreach (var severity in new[] { Severity.Error, Severity.Warning, Severity.Note })
-            Count(report.Findings.Count(f => f.Severity == severity), severity.ToString().ToLowerInvariant() + "s", "");
+        {
+            var count = report.Findings.Count(f => f.Severity == severity);
+            Count(count, severity.ToString().ToLowerInvariant() + (count == 1 ? "" : "s"), "");
+        }
         html.Append("</ul></header><p class=\"caution\" role=\"note\"><strong>Caution.</strong> ").Append(HtmlText.Escape(ReportCaution.Text)).Append("</p>");
         var whole = report.Findings.Where(f => f.CrossingId is null).OrderByDescending(f => f.Severity).ToList();
         if (whole.Count == 0) return;

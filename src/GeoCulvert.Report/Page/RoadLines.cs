@@ -10,7 +10,7 @@ namespace GeoCulvert.Report.Page;
 /// <summary>Roads with their names and station marks.</summary>
 internal static class RoadLines
 {
-    public static void Append(StringBuilder svg, StudyReport report, MapPath path)
+    public static void Append(StringBuilder svg, StudyReport report, MapPath path, IReadOnlyList<Coordinate> crossings)
     {
         var roads = LayerTable.Open(report, "roads");
         var stations = new StringBuilder();
@@ -24,7 +24,7 @@ internal static class RoadLines
             var start = roads.Number(row, "start_station", QuantityKind.Length) ?? 0;
             foreach (var line in Lines(row.Geometry!))
             {
-                AppendName(svg, line, name, path);
+                AppendName(svg, line, name, path, crossings);
                 start = AppendStations(stations, line, start, report.Units, path);
             }
         }
@@ -46,14 +46,16 @@ internal static class RoadLines
         _ => [],
     };
 
-    private static void AppendName(StringBuilder svg, LineString line, string name, MapPath path)
+    /// <summary>The name stands in the middle of the longest stretch without a crossing.</summary>
+    private static void AppendName(StringBuilder svg, LineString line, string name, MapPath path, IReadOnlyList<Coordinate> crossings)
     {
         if (name.Length == 0) return;
-        var (at, angle) = Along(line, line.Length * 0.04);
+        var (at, angle) = Enumerable.Range(1, 19).Select(k => Along(line, line.Length * k / 20))
+            .MaxBy(p => crossings.Count == 0 ? -p.At.Distance(line.Centroid.Coordinate) : crossings.Min(c => c.Distance(p.At)));
         var (x, y) = path.Place(at.X, at.Y);
         var turn = angle is > 90 or < -90 ? angle + 180 : angle;
         svg.Append("<g transform=\"translate(").Append(x).Append(' ').Append(y).Append(")\"><g class=\"k\"><text class=\"rn\" transform=\"rotate(")
-            .Append(Math.Round(turn).ToString(CultureInfo.InvariantCulture)).Append(")\" text-anchor=\"").Append(angle is > 90 or < -90 ? "end" : "start").Append("\" y=\"-9\">")
+            .Append(Math.Round(turn).ToString(CultureInfo.InvariantCulture)).Append(")\" text-anchor=\"middle\" y=\"-9\">")
             .Append(HtmlText.Escape(HtmlText.Shorten(name, 40))).Append("</text></g></g>");
     }
 

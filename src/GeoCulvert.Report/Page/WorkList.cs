@@ -22,7 +22,8 @@ internal static class WorkList
         Heading("Velocity", Unit(QuantityKind.Velocity), "n");
         Heading("Findings", "", "n");
         html.Append("</tr></thead><tbody>");
-        foreach (var entry in CrossingEntry.WorstFirst(entries)) AppendRow(html, report, crossings, entry);
+        var hasRoads = entries.Select(e => RoadOf(crossings, e)).Distinct(StringComparer.Ordinal).Take(2).Count() > 1;
+        foreach (var entry in CrossingEntry.WorstFirst(entries)) AppendRow(html, crossings, entry, hasRoads);
         html.Append("</tbody></table><p id=\"none\" hidden>No crossing fits the search.</p></div>");
 
         void Heading(string text, string unit, string kind)
@@ -44,16 +45,17 @@ internal static class WorkList
     /// <summary>The address of a crossing within the page.</summary>
     public static string Address(string crossingId) => "#crossing=" + Uri.EscapeDataString(ValidUtf16(crossingId));
 
-    private static void AppendRow(StringBuilder html, StudyReport report, LayerTable crossings, CrossingEntry entry)
+    private static void AppendRow(StringBuilder html, LayerTable crossings, CrossingEntry entry, bool hasRoads)
     {
         double? Number(string name, QuantityKind kind) => entry.Row is null ? null : crossings.Number(entry.Row, name, kind);
-        var road = entry.Sheet?.Road ?? (entry.Row is null ? "" : crossings.Text(entry.Row, "road"));
         var station = Number("station", QuantityKind.Length);
         html.Append("<tr data-c=\"").Append(entry.Index).Append(entry.NeedsLook ? "\" data-look=\"1\"" : "\"").Append("><td><a href=\"").Append(HtmlText.Escape(Address(entry.Id)))
             .Append("\" title=\"").Append(HtmlText.Escape(entry.Id)).Append("\"><i class=\"dot ").Append(entry.HasNoCulvert ? "bad" : entry.NeedsLook ? "look" : "ok").Append("\"></i>")
             .Append(HtmlText.Isolated(HtmlText.Shorten(entry.Id, 28))).Append("</a></td>");
         html.Append("<td class=\"st\" data-v=\"").Append(entry.Index).Append("\" title=\"").Append(station is { } s ? FigureText.Full(s) : "").Append("\"><span>")
-            .Append(HtmlText.Escape(entry.Sheet?.Station ?? FigureText.Round(station, QuantityKind.Length))).Append("</span> <small>").Append(HtmlText.Isolated(HtmlText.Shorten(road, 24))).Append("</small></td>");
+            .Append(HtmlText.Escape(entry.Sheet?.Station ?? FigureText.Round(station, QuantityKind.Length))).Append("</span>");
+        if (hasRoads) html.Append(" <small>").Append(HtmlText.Isolated(HtmlText.Shorten(RoadOf(crossings, entry), 24))).Append("</small>");
+        html.Append("</td>");
         Cell(html, Number("watershed_area", QuantityKind.Area), QuantityKind.Area);
         Cell(html, entry.DesignFlow, QuantityKind.Flow);
         html.Append("<td class=\"cu\" title=\"").Append(HtmlText.Escape(entry.Culvert)).Append("\">")
@@ -64,6 +66,8 @@ internal static class WorkList
         AppendFindings(html, entry);
         html.Append("</tr>");
     }
+
+    private static string RoadOf(LayerTable crossings, CrossingEntry entry) => entry.Sheet?.Road ?? (entry.Row is null ? "" : crossings.Text(entry.Row, "road"));
 
     private static void AppendHeadwater(StringBuilder html, CrossingEntry entry)
     {

@@ -17,10 +17,14 @@
 
   /* ---- the view: part of the map that is shown, in map units ---- */
   var W = +map.dataset.w, H = +map.dataset.h, view = { x: 0, y: 0, w: W, h: H }, u = 1, size = { w: 1, h: 1 };
+  function spot(g) { var t = g.transform.baseVal.getItem(0).matrix; return [t.e, t.f]; }
   var labels = $$('.m', marks).map(function (g) {
-    var t = g.transform.baseVal.getItem(0).matrix;
-    return { g: g, x: t.e, y: t.f, text: $('.lb', g), box: null, rank: g.classList.contains('bad') ? 0 : g.classList.contains('look') ? 1 : 2 };
-  }).sort(function (a, b) { return a.rank - b.rank; });
+    var p = spot(g);
+    return { g: g, c: g.dataset.c, x: p[0], y: p[1], text: $('.lb', g), boxes: [], rank: g.classList.contains('bad') ? 1 : g.classList.contains('look') ? 2 : 3 };
+  }).concat($$('.rn, .sn', map).map(function (text) {
+    var p = spot(text.parentNode.parentNode);
+    return { c: '', x: p[0], y: p[1], text: text, boxes: [], rank: text.classList.contains('rn') ? 0 : 4 };
+  })).sort(function (a, b) { return a.rank - b.rank; });
 
   function measure() {
     var r = map.getBoundingClientRect();
@@ -71,24 +75,34 @@
     el('path', { 'class': 'na', d: 'M' + x + ' ' + (size.h - 55) + 'l7 20l-7-5l-7 5z' });
     el('text', { x: x, y: size.h - 17, 'text-anchor': 'middle' }, 'N');
   }
+  /* Texts that would cover a mark or one another step back: first to the id alone, then out of sight. */
   function placeLabels() {
     var taken = [], many = 0;
-    labels.forEach(function (l) { l.sx = (l.x - view.x) / u; l.sy = (l.y - view.y) / u; l.seen = l.sx > -20 && l.sy > -20 && l.sx < size.w + 20 && l.sy < size.h + 20; if (l.seen) many++; });
-    labels.forEach(function (l) { if (l.seen && many < 400) taken.push([l.sx - 8, l.sy - 8, l.sx + 8, l.sy + 8, l]); });
-    var order = labels.filter(function (l) { return l.g.dataset.c === chosen; }).concat(labels);
-    var done = {};
-    order.forEach(function (l) {
-      if (done[l.g.dataset.c]) return;
-      done[l.g.dataset.c] = 1;
-      var fits = l.seen && (many < 400 || l.g.dataset.c === chosen);
-      if (fits) {
-        if (!l.box) { l.text.classList.remove('off'); l.box = l.text.getBBox(); }
-        var right = l.sx + l.box.x + l.box.width > size.w - 4, x0 = right ? l.sx - l.box.x - l.box.width : l.sx + l.box.x, b = [x0, l.sy + l.box.y, x0 + l.box.width, l.sy + l.box.y + l.box.height];
-        fits = l.g.dataset.c === chosen || !taken.some(function (t) { return t[4] !== l && t[0] < b[2] && b[0] < t[2] && t[1] < b[3] && b[1] < t[3]; });
-        if (fits) { taken.push(b.concat([l])); l.text.style.transform = right ? 'translateX(' + -(2 * l.box.x + l.box.width) + 'px)' : ''; }
-      }
-      l.text.classList.toggle('off', !fits);
+    labels.forEach(function (l) {
+      l.sx = (l.x - view.x) / u; l.sy = (l.y - view.y) / u;
+      l.seen = l.sx > -20 && l.sy > -20 && l.sx < size.w + 20 && l.sy < size.h + 20;
+      if (l.seen && l.g) many++;
     });
+    var few = many < 400;
+    if (few) labels.forEach(function (l) { if (l.seen && l.g) taken.push([l.sx - 7, l.sy - 7, l.sx + 7, l.sy + 7, l]); });
+    labels.filter(function (l) { return l.c === chosen; }).concat(labels.filter(function (l) { return l.c !== chosen; })).forEach(function (l) {
+      var forced = l.c === chosen, fits = l.seen && (few || forced || !l.g) && place(l, 0, forced);
+      if (!fits && l.g && l.seen && few) fits = place(l, 1, false);
+      if (!fits) l.text.classList.add('off');
+    });
+    function place(l, brief, forced) {
+      l.text.classList.remove('off');
+      l.text.classList.toggle('brief', !!brief);
+      if (!l.boxes[brief]) {
+        var r = l.text.getBBox(), turned = l.text.transform.baseVal.numberOfItems > 0;
+        l.boxes[brief] = turned ? [r.x, -18, r.x + r.width, 4] : [r.x, r.y, r.x + r.width, r.y + r.height];
+      }
+      var q = l.boxes[brief], flip = l.g && l.sx + q[2] > size.w - 4, x0 = l.sx + (flip ? -q[2] : q[0]), b = [x0, l.sy + q[1], x0 + q[2] - q[0], l.sy + q[3]];
+      if (!forced && taken.some(function (t) { return t[4] !== l && t[0] < b[2] && b[0] < t[2] && t[1] < b[3] && b[1] < t[3]; })) return false;
+      if (l.g) l.text.style.transform = flip ? 'translateX(' + -(q[0] + q[2]) + 'px)' : '';
+      taken.push(b.concat([l]));
+      return true;
+    }
   }
 
   /* ---- moving about ---- */
@@ -164,7 +178,7 @@
       var box = rowOf[c].closest('.scroll'), top = rowOf[c].offsetTop, head = $('#list thead').offsetHeight;
       if (top - head < box.scrollTop || top + 40 > box.scrollTop + box.clientHeight) box.scrollTop = top - box.clientHeight / 2;
     }
-    var mark = labels.find(function (l) { return l.g.dataset.c === c; });
+    var mark = labels.find(function (l) { return l.c === c; });
     if (mark) {
       marks.appendChild(mark.g);
       var sx = (mark.x - view.x) / u, sy = (mark.y - view.y) / u;

@@ -30,6 +30,7 @@ public static class BarrelSection
         var margin = 0.12 * (high - low);
         (plot.XRange, plot.YRange) = ((Out(west, 0).Item1, Out(east, 0).Item1), (Out(0, low - margin).Item2, Out(0, high + margin).Item2));
 
+        var half = Math.Min(barrel.RoadWidthM, length) / 2;
         var bank = Bank(barrel);
         var bed = low - margin;
         if (floods.Count > 0) FillOutside(floods[0]);
@@ -45,16 +46,21 @@ public static class BarrelSection
         for (var i = 0; i < Math.Min(2, floods.Count); i++) plot.Line(Surface(floods[i]), i == 0 ? "c1" : "c5", floods[i].Name);
         foreach (var flood in floods.Take(1))
         {
-            plot.Note(Out(west / 2, 0).Item1, Out(0, flood.HeadwaterElevationM).Item2, "headwater " + FigureText.FromSi(flood.HeadwaterElevationM, QuantityKind.Length, units));
-            plot.Note(Out(length + (reach / 2), 0).Item1, Out(0, Math.Max(flood.TailwaterElevationM, outlet)).Item2, "tailwater " + FigureText.FromSi(flood.TailwaterElevationM, QuantityKind.Length, units));
+            plot.Note(Out(west / 2, 0).Item1, Out(0, flood.HeadwaterElevationM).Item2, "headwater " + FigureText.FromSi(flood.HeadwaterElevationM, QuantityKind.Length, units), isBelow: true);
+            plot.Note(Out(length + (reach / 2), 0).Item1, Out(0, Math.Max(flood.TailwaterElevationM, outlet)).Item2, "tailwater " + FigureText.FromSi(flood.TailwaterElevationM, QuantityKind.Length, units), isBelow: true);
         }
         plot.Note(Out(length / 2, 0).Item1, Out(0, barrel.RoadElevationM).Item2, "road " + FigureText.FromSi(barrel.RoadElevationM, QuantityKind.Length, units));
         return plot.Render(isStandalone: false);
 
+        // Three pieces with a gap between: the pool up to the embankment, the water along the barrel, the tailwater from the embankment.
         IEnumerable<(double, double)> Surface(SheetFlood flood) =>
-            flood.Surface.Select(s => Out(s.DistanceM, s.ElevationM))
-                .Prepend(Out(0, flood.HeadwaterElevationM)).Prepend(Out(west, flood.HeadwaterElevationM))
-                .Append(Out(length, flood.TailwaterElevationM)).Append(Out(east, flood.TailwaterElevationM));
+        [
+            Out(west, flood.HeadwaterElevationM), Out(Math.Max(0, FaceAt(flood.HeadwaterElevationM, (length / 2) - half)), flood.HeadwaterElevationM), (double.NaN, 0),
+            .. flood.Surface.Select(s => Out(s.DistanceM, s.ElevationM)), (double.NaN, 0),
+            Out(Math.Min(length, length - FaceAt(flood.TailwaterElevationM, (length / 2) - half)), flood.TailwaterElevationM), Out(east, flood.TailwaterElevationM),
+        ];
+
+        double FaceAt(double level, double crest) => level >= barrel.RoadElevationM ? length / 2 : crest - ((barrel.RoadElevationM - level) * Math.Max(0, barrel.SideSlope));
 
         void FillOutside(SheetFlood flood)
         {

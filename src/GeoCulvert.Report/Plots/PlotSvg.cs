@@ -64,10 +64,10 @@ public sealed class PlotSvg(string title, string xTitle, string yTitle, int widt
         return this;
     }
 
-    /// <summary>Adds a text above a point.</summary>
-    public PlotSvg Note(double x, double y, string text)
+    /// <summary>Adds a text above a point, or below it.</summary>
+    public PlotSvg Note(double x, double y, string text, bool isBelow = false)
     {
-        items.Add(new Item(Shape.Note, "", [(x, y)], text));
+        items.Add(new Item(Shape.Note, isBelow ? "below" : "", [(x, y)], text));
         return this;
     }
 
@@ -105,13 +105,7 @@ public sealed class PlotSvg(string title, string xTitle, string yTitle, int widt
         {
             case Shape.Line or Shape.Fill:
                 svg.Append("<path class=\"").Append(item.Shape == Shape.Line ? "l " : "").Append(item.Style).Append("\" d=\"");
-                var isOpen = false;
-                foreach (var (x, y) in item.Points)
-                {
-                    if (!double.IsFinite(x) || !double.IsFinite(y)) { isOpen = false; continue; }
-                    svg.Append(isOpen ? 'L' : 'M').Append(Px(f.X(x))).Append(' ').Append(Px(f.Y(y)));
-                    isOpen = true;
-                }
+                AppendPath(svg, f, item.Points);
                 svg.Append(item.Shape == Shape.Fill ? "Z\"/>" : "\"/>");
                 break;
             case Shape.Dot when double.IsFinite(item.Points[0].X) && double.IsFinite(item.Points[0].Y):
@@ -122,10 +116,24 @@ public sealed class PlotSvg(string title, string xTitle, string yTitle, int widt
                     .Append(isRight ? "\" text-anchor=\"end\">" : "\">").Append(HtmlText.Escape(item.Text)).Append("</text></g>");
                 break;
             case Shape.Note when double.IsFinite(item.Points[0].X) && double.IsFinite(item.Points[0].Y):
-                svg.Append("<text class=\"halo\" text-anchor=\"middle\" x=\"").Append(Px(f.X(item.Points[0].X))).Append("\" y=\"").Append(Px(f.Y(item.Points[0].Y) - 5))
+                svg.Append("<text class=\"halo\" text-anchor=\"middle\" x=\"").Append(Px(f.X(item.Points[0].X))).Append("\" y=\"").Append(Px(f.Y(item.Points[0].Y) + (item.Style.Length > 0 ? 15 : -5)))
                     .Append("\">").Append(HtmlText.Escape(item.Text)).Append("</text>");
                 break;
             default: break;
+        }
+    }
+
+    /// <summary>Path data in steps of a tenth of a pixel, relative to the point before.</summary>
+    private static void AppendPath(StringBuilder svg, Frame f, IReadOnlyList<(double X, double Y)> points)
+    {
+        var (isOpen, lastX, lastY) = (false, 0.0, 0.0);
+        foreach (var (px, py) in points)
+        {
+            if (!double.IsFinite(px) || !double.IsFinite(py)) { isOpen = false; continue; }
+            var (x, y) = (Math.Round(f.X(px), 1), Math.Round(f.Y(py), 1));
+            var (dx, dy) = (Px(isOpen ? x - lastX : x), Px(isOpen ? y - lastY : y));
+            if (!isOpen || dx is not "0" || dy is not "0") svg.Append(isOpen ? 'l' : 'M').Append(dx).Append(dy[0] == '-' ? "" : " ").Append(dy);
+            (isOpen, lastX, lastY) = (true, x, y);
         }
     }
 

@@ -6,7 +6,7 @@ namespace GeoCulvert.Report.Relief;
 public static class HillshadePng
 {
     private const int Tones = 96;
-    private const int Darkest = 104;
+    private const int Darkest = 118;
 
     /// <summary>Writes the relief of a terrain.</summary>
     /// <param name="terrain">Elevations in m on a metric north-up frame; NaN is nodata.</param>

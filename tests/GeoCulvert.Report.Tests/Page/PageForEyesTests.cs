@@ -20,6 +20,6 @@ public sealed class PageForEyesTests
             Assert.True(file.Length > 10_000);
         }
         using var schedule = File.Create(Path.Combine(folder, "schedule.csv"));
-        Schedule.ScheduleCsv.Write(InventedStudy.Make(), schedule);
+        Report.Schedule.ScheduleCsv.Write(InventedStudy.Make(), schedule);
     }
 }
