@@ -8,6 +8,9 @@ namespace GeoCulvert.Report.Page;
 /// <summary>Writes <c>report.html</c>: one file with map, list and a sheet per crossing; it opens offline and refers to nothing outside.</summary>
 public static class ReportPage
 {
+    /// <summary>Runs before anything is laid out, so that sheets which are not shown are never laid out.</summary>
+    private const string LiveScript = "document.documentElement.classList.add('live')";
+
     /// <summary>Writes the page as UTF-8; the same study gives the same bytes.</summary>
     /// <param name="report">The study; layers in output units, sheets in SI.</param>
     /// <param name="output">Receives the page; stays open.</param>
@@ -34,12 +37,15 @@ public static class ReportPage
             .Append(entries.Count(e => e.NeedsLook)).Append(")</label><span id=\"shown\" role=\"status\">").Append(entries.Count).Append(" crossings</span></div>");
         WorkList.Append(html, report, crossings, entries);
         html.Append("</section></div><section id=\"sheets\" aria-label=\"Sheets\"><div class=\"sheetbar\"><span id=\"chosen\">Choose a crossing in the list or on the map to see its sheet.</span><button type=\"button\" id=\"prev\">Previous</button><button type=\"button\" id=\"next\">Next</button><button type=\"button\" id=\"print1\">Print this sheet</button><button type=\"button\" id=\"printall\">Print all sheets</button></div>");
+        var isPacked = entries.Count > SheetPack.LargestPlainStudy;
+        if (isPacked) html.Append("<noscript><p>This large study keeps its sheets packed; they need scripting to open.</p></noscript>");
         writer.Write(html);
-        foreach (var entry in entries)
+        foreach (var group in entries.Chunk(isPacked ? SheetPack.SheetsPerPack : 1))
         {
             html.Clear();
-            SheetHtml.Append(html, report, entry);
-            writer.Write(html.Append('\n'));
+            foreach (var entry in group) SheetHtml.Append(html, report, entry);
+            if (isPacked) SheetPack.Write(writer, group[0].Index, group.Length, html.ToString());
+            else writer.Write(html.Append('\n'));
         }
         html.Clear();
         html.Append("</section>");
@@ -50,12 +56,13 @@ public static class ReportPage
     private static void AppendHead(StringBuilder html, StudyReport report, string style, string script)
     {
         // The page may run its own script and nothing else, and may load nothing: a name that slipped through could still do no harm.
-        var hash = Convert.ToBase64String(SHA256.HashData(Encoding.UTF8.GetBytes(script)));
-        html.Append("<!DOCTYPE html>\n<html lang=\"en\"><head><meta charset=\"utf-8\"><meta http-equiv=\"Content-Security-Policy\" content=\"default-src 'none'; img-src data:; style-src 'unsafe-inline'; script-src 'sha256-")
-            .Append(hash).Append("'; base-uri 'none'; form-action 'none'\"><meta name=\"viewport\" content=\"width=device-width, initial-scale=1\"><meta name=\"color-scheme\" content=\"light dark\"><link rel=\"icon\" href=\"data:,\"><title>")
-            .Append(HtmlText.Escape(report.StudyName)).Append(": culverts</title><style>").Append(style).Append("@page{@bottom-left{content:")
+        html.Append("<!DOCTYPE html>\n<html lang=\"en\"><head><meta charset=\"utf-8\"><meta http-equiv=\"Content-Security-Policy\" content=\"default-src 'none'; img-src data:; style-src 'unsafe-inline'; script-src ")
+            .Append(Hash(LiveScript)).Append(' ').Append(Hash(script)).Append("; base-uri 'none'; form-action 'none'\"><meta name=\"viewport\" content=\"width=device-width, initial-scale=1\"><meta name=\"color-scheme\" content=\"light dark\"><link rel=\"icon\" href=\"data:,\"><title>")
+            .Append(HtmlText.Escape(report.StudyName)).Append(": culverts</title><script>").Append(LiveScript).Append("</script><style>").Append(style).Append("@page{@bottom-left{content:")
             .Append(HtmlText.CssString(HtmlText.Shorten(report.StudyName, 60) + "  " + SheetHtml.RunLine(report))).Append("}}</style></head><body>");
     }
+
+    private static string Hash(string script) => $"'sha256-{Convert.ToBase64String(SHA256.HashData(Encoding.UTF8.GetBytes(script)))}'";
 
     private static void AppendTop(StringBuilder html, StudyReport report, IReadOnlyList<CrossingEntry> entries)
     {

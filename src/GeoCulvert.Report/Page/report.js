@@ -3,9 +3,8 @@
   var $ = function (q, e) { return (e || document).querySelector(q); };
   var $$ = function (q, e) { return Array.prototype.slice.call((e || document).querySelectorAll(q)); };
   var NS = 'http://www.w3.org/2000/svg';
-  var body = document.body, map = $('#map'), marks = $('#marks'), furniture = $('#furniture');
+  var root = document.documentElement, map = $('#map'), marks = $('#marks'), furniture = $('#furniture');
   var rows = $$('#list tbody tr'), sheets = {}, rowOf = {}, idOf = {}, chosen = null;
-  body.classList.add('live');
 
   rows.forEach(function (tr) {
     var c = tr.dataset.c;
@@ -13,7 +12,26 @@
     idOf[c] = decodeURIComponent($('a', tr).getAttribute('href').slice('#crossing='.length));
     tr.words = tr.textContent.toLowerCase() + ' ' + idOf[c].toLowerCase();
   });
-  $$('article.sheet').forEach(function (a) { sheets[a.dataset.c] = a; a.id = 'sheet-' + a.dataset.c; });
+  function register(a) { sheets[a.dataset.c] = a; a.id = 'sheet-' + a.dataset.c; }
+  $$('article.sheet').forEach(register);
+
+  /* ---- sheets of a large study come in packs that are opened when wanted ---- */
+  var packs = $$('script[data-first]').map(function (e) { return { e: e, first: +e.dataset.first, end: +e.dataset.first + +e.dataset.count, opened: null }; });
+  function unpack(pack) {
+    if (pack.opened) return pack.opened;
+    var bytes = Uint8Array.from(atob(pack.e.textContent), function (c) { return c.charCodeAt(0); });
+    pack.opened = new Response(new Blob([bytes]).stream().pipeThrough(new DecompressionStream('deflate'))).text().then(function (text) {
+      var found = $$('article.sheet', new DOMParser().parseFromString(text, 'text/html'));
+      found.forEach(register);
+      pack.e.replaceWith.apply(pack.e, found);
+    });
+    return pack.opened;
+  }
+  function withSheet(c, use) {
+    if (sheets[c]) { use(sheets[c]); return; }
+    var pack = packs.find(function (p) { return c >= p.first && c < p.end; });
+    if (pack) unpack(pack).then(function () { if (sheets[c]) use(sheets[c]); });
+  }
 
   /* ---- the view: part of the map that is shown, in map units ---- */
   var W = +map.dataset.w, H = +map.dataset.h, view = { x: 0, y: 0, w: W, h: H }, u = 1, size = { w: 1, h: 1 };
@@ -171,8 +189,8 @@
     rowOf[c].classList.add('on');
     rowOf[c].setAttribute('aria-current', 'true');
     $$('[data-c="' + c + '"]', map).forEach(function (e) { e.classList.add('on'); });
-    if (sheets[c]) sheets[c].classList.add('on');
-    body.classList.add('has');
+    withSheet(c, function (sheet) { if (chosen === c) sheet.classList.add('on'); });
+    root.classList.add('has');
     $('#chosen').textContent = 'Sheet of crossing ' + idOf[c];
     if (reveal) {
       var box = rowOf[c].closest('.scroll'), top = rowOf[c].offsetTop, head = $('#list thead').offsetHeight;
@@ -246,12 +264,12 @@
 
   /* ---- print: the chosen sheet, or all with map and list ---- */
   function print(all) {
-    body.classList.toggle('printall', all);
+    root.classList.toggle('printall', all);
     window.print();
-    body.classList.remove('printall');
+    root.classList.remove('printall');
   }
   $('#print1').addEventListener('click', function () { if (chosen === null) step(1); print(false); });
-  $('#printall').addEventListener('click', function () { print(true); });
+  $('#printall').addEventListener('click', function () { Promise.all(packs.map(unpack)).then(function () { print(true); }); });
 
   new ResizeObserver(function () {
     var before = size.w, m = middle();

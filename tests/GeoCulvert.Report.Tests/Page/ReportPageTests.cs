@@ -64,14 +64,29 @@ public sealed class ReportPageTests
     }
 
     [Fact]
-    public void TheScriptItAllowsIsTheScriptItHolds()
+    public void TheScriptsItAllowsAreTheScriptsItHolds()
     {
         var page = Page(InventedStudy.Make());
-        var script = Regex.Match(page, "<script>(?<s>.*?)</script>", RegexOptions.Singleline, Patience).Groups["s"].Value;
-        var hash = Convert.ToBase64String(System.Security.Cryptography.SHA256.HashData(Encoding.UTF8.GetBytes(script)));
-        Assert.Contains($"script-src 'sha256-{hash}'", page, StringComparison.Ordinal);
-        Assert.Single(Regex.Matches(page, "<script", RegexOptions.None, Patience));
-        Assert.DoesNotMatch(new Regex(@"innerHTML|outerHTML|insertAdjacentHTML|document\.write|eval\(|fetch\(|XMLHttp|import\(", RegexOptions.None, Patience), script);
+        var scripts = Regex.Matches(page, "<script>(?<s>.*?)</script>", RegexOptions.Singleline, Patience).Select(m => m.Groups["s"].Value).ToList();
+        var hashes = scripts.Select(s => $"'sha256-{Convert.ToBase64String(System.Security.Cryptography.SHA256.HashData(Encoding.UTF8.GetBytes(s)))}'");
+        Assert.Contains($"script-src {string.Join(' ', hashes)};", page, StringComparison.Ordinal);
+        Assert.Equal(2, Regex.Count(page, "<script", RegexOptions.None, Patience));
+        Assert.DoesNotMatch(new Regex(@"innerHTML|outerHTML|insertAdjacentHTML|document\.write|eval\(|fetch\(|XMLHttp|import\(", RegexOptions.None, Patience), string.Concat(scripts));
+    }
+
+    [Fact]
+    public void ALargeStudyPacksTheSameSheets()
+    {
+        var report = InventedStudy.Make(copies: 18);
+        Assert.Equal(126, report.Sheets.Count);
+        var page = Page(report);
+        Assert.DoesNotContain("<article", page, StringComparison.Ordinal);
+        var packs = Regex.Matches(page, "<script type=\"application/zlib\" data-first=\"(?<f>\\d+)\" data-count=\"(?<n>\\d+)\">(?<b>[A-Za-z0-9+/=]+)</script>", RegexOptions.None, Patience);
+        var sheets = string.Concat(packs.Select(m => Inflate(m.Groups["b"].Value)));
+        Assert.Equal(126, packs.Sum(m => int.Parse(m.Groups["n"].Value, System.Globalization.CultureInfo.InvariantCulture)));
+        var ids = Regex.Matches(sheets, "<article class=\"sheet\" data-c=\"(?<c>\\d+)\" id=\"crossing=(?<i>[^\"]*)\"", RegexOptions.None, Patience);
+        Assert.Equal(report.Sheets.Select((s, i) => (i, s.CrossingId)), ids.Select(m => (int.Parse(m.Groups["c"].Value, System.Globalization.CultureInfo.InvariantCulture), m.Groups["i"].Value)));
+        foreach (var svg in Svgs(sheets)) _ = XElement.Parse(svg);
     }
 
     [Fact]
@@ -134,6 +149,13 @@ public sealed class ReportPageTests
         var page = Page(InventedStudy.Make() with { Layers = [], Sheets = [], Findings = [] });
         Assert.Contains("0</b> crossings", page, StringComparison.Ordinal);
         foreach (var svg in Svgs(page)) _ = XElement.Parse(svg);
+    }
+
+    private static string Inflate(string base64)
+    {
+        using var zlib = new System.IO.Compression.ZLibStream(new MemoryStream(Convert.FromBase64String(base64)), System.IO.Compression.CompressionMode.Decompress);
+        using var reader = new StreamReader(zlib, Encoding.UTF8);
+        return reader.ReadToEnd();
     }
 
     private static string Page(StudyReport report) => new UTF8Encoding(false, true).GetString(Bytes(report));
