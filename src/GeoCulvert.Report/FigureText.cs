@@ -35,7 +35,7 @@ public static class FigureText
     public static string WithUnit(double? value, QuantityKind kind, UnitSystem units)
     {
         var unit = Unit(kind, units);
-        return unit.Length == 0 || value is null ? FromSi(value, kind, units) : FromSi(value, kind, units) + " " + unit;
+        return unit.Length == 0 || value is not { } v || !double.IsFinite(v) ? FromSi(value, kind, units) : FromSi(value, kind, units) + " " + unit;
     }
 
     /// <summary>The unit as printed to people: m3/s as m\u00b3/s, deg as \u00b0.</summary>

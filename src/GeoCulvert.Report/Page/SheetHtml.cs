@@ -151,7 +151,7 @@ internal sealed class SheetHtml
             {
                 html.Append("<tr><td>").Append(E(fact.Label)).Append("</td>");
                 if (fact.Value is { } v) Value(v, fact.Kind);
-                else html.Append("<td class=\"n\">").Append(E(fact.Text ?? FigureText.Missing)).Append("</td>");
+                else html.Append("<td class=\"n tx\">").Append(E(fact.Text ?? FigureText.Missing)).Append("</td>");
                 html.Append("<td class=\"src\">").Append(E(fact.Origin)).Append("</td></tr>");
             }
             Close();

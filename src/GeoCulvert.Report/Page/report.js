@@ -38,10 +38,10 @@
   function spot(g) { var t = g.transform.baseVal.getItem(0).matrix; return [t.e, t.f]; }
   var labels = $$('.m', marks).map(function (g) {
     var p = spot(g);
-    return { g: g, c: g.dataset.c, x: p[0], y: p[1], text: $('.lb', g), boxes: [], rank: g.classList.contains('bad') ? 1 : g.classList.contains('look') ? 2 : 3 };
+    return { g: g, c: g.dataset.c, x: p[0], y: p[1], text: $('.lb', g), boxes: null, rank: g.classList.contains('bad') ? 1 : g.classList.contains('look') ? 2 : 3 };
   }).concat($$('.rn, .sn', map).map(function (text) {
     var p = spot(text.parentNode.parentNode);
-    return { c: '', x: p[0], y: p[1], text: text, boxes: [], rank: text.classList.contains('rn') ? 0 : 4 };
+    return { c: '', x: p[0], y: p[1], text: text, boxes: null, rank: text.classList.contains('rn') ? 0 : 4 };
   })).sort(function (a, b) { return a.rank - b.rank; });
 
   function measure() {
@@ -103,20 +103,34 @@
     });
     var few = many < 400;
     if (few) labels.forEach(function (l) { if (l.seen && l.g) taken.push([l.sx - 7, l.sy - 7, l.sx + 7, l.sy + 7, l]); });
-    labels.filter(function (l) { return l.c === chosen; }).concat(labels.filter(function (l) { return l.c !== chosen; })).forEach(function (l) {
-      var forced = l.c === chosen, fits = l.seen && (few || forced || !l.g) && place(l, 0, forced);
-      if (!fits && l.g && l.seen && few) fits = place(l, 1, false);
-      if (!fits) l.text.classList.add('off');
-    });
-    function place(l, brief, forced) {
-      l.text.classList.remove('off');
-      l.text.classList.toggle('brief', !!brief);
-      if (!l.boxes[brief]) {
-        var r = l.text.getBBox(), turned = l.text.transform.baseVal.numberOfItems > 0;
-        l.boxes[brief] = turned ? [r.x, -18, r.x + r.width, 4] : [r.x, r.y, r.x + r.width, r.y + r.height];
+    var wanted = labels.filter(function (l) { return l.seen && (few || !l.g || l.c === chosen); });
+
+    // All writes before all reads: each text is measured once, without laying the map out again for every one.
+    var fresh = wanted.filter(function (l) { return !l.boxes; });
+    fresh.forEach(function (l) { l.text.classList.remove('off', 'brief'); });
+    fresh.forEach(function (l) {
+      if (l.g) {
+        var id = $('.id', l.text).getComputedTextLength(), full = $('.full', l.text).getComputedTextLength();
+        l.boxes = [[11, -13, 11 + Math.max(id, full), 15], [11, -13, 11 + id, 2]];
+      } else {
+        var r = l.text.getBBox();
+        l.boxes = [l.rank ? [r.x, r.y, r.x + r.width, r.y + r.height] : [r.x, -21, r.x + r.width, -6]];
       }
-      var q = l.boxes[brief], flip = l.g && l.sx + q[2] > size.w - 4, x0 = l.sx + (flip ? -q[2] : q[0]), b = [x0, l.sy + q[1], x0 + q[2] - q[0], l.sy + q[3]];
+    });
+    var fits = new Map();
+    wanted.filter(function (l) { return l.c === chosen; }).concat(wanted.filter(function (l) { return l.c !== chosen; })).forEach(function (l) {
+      var forced = l.c === chosen;
+      if ((l.rank ? [0] : [0, -17, 40]).some(function (dy) { return place(l, 0, forced, dy); })) fits.set(l, 0);
+      else if (l.g && place(l, 1, false, 0)) fits.set(l, 1);
+    });
+    labels.forEach(function (l) {
+      l.text.classList.toggle('off', !fits.has(l));
+      if (fits.has(l)) l.text.classList.toggle('brief', fits.get(l) === 1);
+    });
+    function place(l, brief, forced, dy) {
+      var q = l.boxes[brief], flip = l.g && l.sx + q[2] > size.w - 4, x0 = l.sx + (flip ? -q[2] : q[0]), b = [x0, l.sy + q[1] + dy, x0 + q[2] - q[0], l.sy + q[3] + dy];
       if (!forced && taken.some(function (t) { return t[4] !== l && t[0] < b[2] && b[0] < t[2] && t[1] < b[3] && b[1] < t[3]; })) return false;
+      if (!l.rank) l.text.setAttribute('dy', dy);
       if (l.g) l.text.style.transform = flip ? 'translateX(' + -(q[0] + q[2]) + 'px)' : '';
       taken.push(b.concat([l]));
       return true;
@@ -200,7 +214,7 @@
     if (mark) {
       marks.appendChild(mark.g);
       var sx = (mark.x - view.x) / u, sy = (mark.y - view.y) / u;
-      if (pan && (sx < 40 || sy < 40 || sx > size.w - 160 || sy > size.h - 40)) { view.x = mark.x - view.w / 2; view.y = mark.y - view.h / 2; show(); }
+      if (pan && (sx < 15 || sy < 15 || sx > size.w - 15 || sy > size.h - 15)) { view.x = mark.x - view.w / 2; view.y = mark.y - view.h / 2; show(); }
     }
     placeLabels();
     var hash = '#crossing=' + encodeURIComponent(idOf[c]);

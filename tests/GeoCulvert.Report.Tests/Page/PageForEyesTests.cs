@@ -19,6 +19,8 @@ public sealed class PageForEyesTests
             ReportPage.Write(InventedStudy.Make(units, copies: copies), file);
             Assert.True(file.Length > 10_000);
         }
+        using (var hostile = File.Create(Path.Combine(folder, "hostile.html")))
+            ReportPage.Write(InventedStudy.Make(name: "<script>alert(1)</script>\"' \u202Egnp.exe \u05e9\u05dc\u05d5\u05dd " + new string('W', 260)), hostile);
         using var schedule = File.Create(Path.Combine(folder, "schedule.csv"));
         Report.Schedule.ScheduleCsv.Write(InventedStudy.Make(), schedule);
     }
