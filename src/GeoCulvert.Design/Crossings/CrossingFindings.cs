@@ -107,6 +107,12 @@ public static class CrossingFindings
         "There is no road level near the crossing.",
         "Give a road profile, a line with elevations, or the road level of this crossing.");
 
+    /// <summary>Cells wider than the road.</summary>
+    public static readonly FindingCode TerrainCoarse = new(
+        "terrain-coarse-at-road", Severity.Warning,
+        "The cells of the terrain model are wider than the road, so that inverts, length or road level measured on it are rough.",
+        "Give inlet, outlet, length and road level from survey or a finer terrain model.");
+
     /// <summary>No embankment above the bed.</summary>
     public static readonly FindingCode NoFill = new(
         "no-fill-height", Severity.Warning,

@@ -24,6 +24,7 @@ public static class CulvertLineSurvey
     /// <param name="filledDepthM">Depth to which conditioning raised each cell, m; null when not known.</param>
     /// <param name="overrides">Figures given instead; null for none.</param>
     /// <param name="settings">Settings; null for the defaults.</param>
+    /// <exception cref="InputException">A given skew outside 0-80 degrees.</exception>
     public static CulvertLine Measure(
         Crossing crossing,
         Grid<byte> direction,
@@ -80,6 +81,8 @@ public static class CulvertLineSurvey
         };
         if (line.SlopeMPerM <= 0) findings.Add(CrossingFindings.AdverseBed.With($"slope {line.SlopeMPerM:0.0000} m/m from {inlet!.Value:0.00} m to {outlet!.Value:0.00} m", line.SlopeMPerM, 0));
         if (line.FillHeightM <= 0) findings.Add(CrossingFindings.NoFill.With($"road {level!.Value:0.00} m, inlet bed {inlet!.Value:0.00} m", line.FillHeightM, 0));
+        if (road is not null && cellM > road.WidthM && new[] { line.InletElevation, line.OutletElevation, line.Length }.Any(f => f is { Origin: FigureOrigin.Measured }))
+            findings.Add(CrossingFindings.TerrainCoarse.With($"cells of {cellM:0.#} m, road {road.WidthM:0.#} m wide", cellM, road.WidthM));
         Filled(crossing, filledDepthM, settings, findings);
         return line with { Findings = [.. findings.Select(f => f.At(crossing.Id))] };
     }
@@ -118,7 +121,8 @@ public static class CulvertLineSurvey
 
     private static double? Skew(Crossing crossing, CrossingOverrides overrides, CulvertLineSettings settings, List<Finding> findings)
     {
-        if (overrides.SkewDeg is { } given) return given;
+        if (overrides.SkewDeg is { } given)
+            return given is >= 0 and <= 80 ? given : throw new InputException($"skew of {crossing.Id}", $"{given:0.##} degrees", "0 to 80 degrees from the perpendicular of the road");
         if (crossing.SkewDeg is not { } skew || skew <= settings.LargestSkewDeg) return crossing.SkewDeg;
         findings.Add(CrossingFindings.SkewTurned.With($"flow at {skew:0} deg, barrel at {settings.LargestSkewDeg:0} deg", skew, settings.LargestSkewDeg));
         return settings.LargestSkewDeg;

@@ -116,4 +116,16 @@ public class CulvertLineSurveyTests
         // The crossing lies at station 11: 104 + 0.6 * 2.
         Assert.Equal(105.2, CulvertLineSurvey.Measure(s.Crossing, s.Direction, s.Accumulation, s.Elevation).RoadElevation!.Value, 9);
     }
+
+    [Fact]
+    public void CellsWiderThanTheRoadAreSaid()
+    {
+        // The same scene, a road 1.5 m wide on cells of 2 m.
+        var road = new RoadAlignment("R", [new LineString([new CoordinateZ(0, 120, 104), new CoordinateZ(22, 120, 104)])]) { WidthM = 1.5 };
+        var s = Scene(road);
+        var line = CulvertLineSurvey.Measure(s.Crossing, s.Direction, s.Accumulation, s.Elevation);
+        Assert.Contains(line.Findings, f => f.Code == "terrain-coarse-at-road" && f.Value == 2 && f.Limit == 1.5);
+        var survey = new CrossingOverrides(s.Crossing.Id) { InletElevationM = 102, OutletElevationM = 101.5, LengthM = 25 };
+        Assert.Empty(CulvertLineSurvey.Measure(s.Crossing, s.Direction, s.Accumulation, s.Elevation, overrides: survey).Findings);
+    }
 }
