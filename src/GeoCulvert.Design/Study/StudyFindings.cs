@@ -1,0 +1,52 @@
+using GeoCulvert.Design.Basis;
+
+namespace GeoCulvert.Design.Study;
+
+/// <summary>Codes raised where the legs of the pipeline meet.</summary>
+public static class StudyFindings
+{
+    /// <summary>No size because the watershed runs off the terrain.</summary>
+    public static readonly FindingCode SizeWithheld = new(
+        "size-withheld-edge-contact", Severity.Error, "No size was issued: the watershed runs off the terrain model, so its area and flow are lower bounds.",
+        "Extend the terrain model; or, if nothing beyond its edge drains here, accept the contact with [crossings] accept_edge_contact.");
+
+    /// <summary>Nothing in the catalogue meets every criterion.</summary>
+    public static readonly FindingCode NoSizeFits = new(
+        "no-size-fits", Severity.Error, "No culvert of the catalogue meets every criterion.",
+        "Raise the road, allow more or larger barrels, bridge the stream, or split the flow; see the option that failed by least.");
+
+    /// <summary>Something is missing for a culvert.</summary>
+    public static readonly FindingCode CulvertNotComputed = new(
+        "culvert-not-computed", Severity.Error, "The culvert could not be computed because something it needs is missing.",
+        "Give what is missing in the project file or in the table of overrides.");
+
+    /// <summary>Channel below the outlet assumed.</summary>
+    public static readonly FindingCode TailwaterAssumed = new(
+        "tailwater-channel-assumed", Severity.Warning, "The channel below the outlet was assumed from the drainage area.",
+        "Give its width, side slope and roughness from survey, or a tailwater level.");
+
+    /// <summary>Bed slope at its floor.</summary>
+    public static readonly FindingCode TailwaterSlopeFloor = new(
+        "tailwater-slope-floor", Severity.Warning, "The terrain below the outlet hardly falls; a least bed slope was used for the tailwater.",
+        "Give the bed slope or the tailwater level.");
+
+    /// <summary>High outlet velocity.</summary>
+    public static readonly FindingCode OutletVelocityHigh = new(
+        "outlet-velocity-high", Severity.Warning, "The outlet velocity at the design flood is high.",
+        "Provide outlet protection, or a flatter or rougher barrel.");
+
+    /// <summary>An override names no crossing.</summary>
+    public static readonly FindingCode OverrideUnused = new(
+        "override-unused", Severity.Warning, "The table of overrides names a crossing that is not in the study.",
+        "Check the id against the list of crossings.");
+
+    /// <summary>No crossing was found.</summary>
+    public static readonly FindingCode NoCrossing = new(
+        "no-crossing", Severity.Warning, "No crossing was found.",
+        "Check that the road meets the terrain model, and whether stream_area is too large.");
+
+    /// <summary>Land cover missing.</summary>
+    public static readonly FindingCode RoadLeavesTerrain = new(
+        "road-leaves-terrain", Severity.Warning, "Part of a road lies outside the terrain model; crossings there are not found.",
+        "Extend the terrain model along the road.");
+}

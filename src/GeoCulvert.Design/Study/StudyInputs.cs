@@ -1,0 +1,141 @@
+using GeoCulvert.Design.Basis;
+using GeoCulvert.Design.Crossings;
+using GeoCulvert.Design.Hydrology;
+using GeoCulvert.Design.Sizing;
+using GeoCulvert.Design.Terrain;
+
+namespace GeoCulvert.Design.Study;
+
+/// <summary>A road of the study.</summary>
+/// <param name="Alignment">Line, width, surface, profile.</param>
+/// <param name="Class">Its class.</param>
+/// <param name="DesignReturnPeriodYr">Design flood, years; null to take the study's, else the class's.</param>
+/// <param name="CheckReturnPeriodYr">Check flood, years; null to take the study's, else the class's.</param>
+public sealed record StudyRoad(RoadAlignment Alignment, RoadClass Class, double? DesignReturnPeriodYr, double? CheckReturnPeriodYr);
+
+/// <summary>What a study is made from, already in one plane and in SI.</summary>
+public sealed record StudyInputs
+{
+    /// <summary>Terrain, m; NaN is nodata.</summary>
+    public required Grid<float> Elevation { get; init; }
+
+    /// <summary>Roads; may be empty when points are given.</summary>
+    public required IReadOnlyList<StudyRoad> Roads { get; init; }
+
+    /// <summary>Given crossings, or null to find them along the roads.</summary>
+    public IReadOnlyList<GivenPoint>? Points { get; init; }
+
+    /// <summary>Land-cover codes on the terrain's grid, or null.</summary>
+    public Grid<int>? LandCover { get; init; }
+
+    /// <summary>Soil groups on the terrain's grid (1-4 = A-D, 5-7 = A/D, B/D, C/D), or null.</summary>
+    public Grid<int>? SoilGroup { get; init; }
+
+    /// <summary>Runoff coefficients by cover and soil group.</summary>
+    public RunoffCoefficientTable Coefficients { get; init; } = RunoffCoefficientTable.Published;
+
+    /// <summary>Values set for single crossings.</summary>
+    public Overrides Overrides { get; init; } = Overrides.None;
+}
+
+/// <summary>How the water level at the outlet is found; SI.</summary>
+public sealed record TailwaterSettings
+{
+    /// <summary>Fixed elevation, m; null for normal depth.</summary>
+    public double? FixedElevationM { get; init; }
+
+    /// <summary>Channel bottom width, m; null to take it from the drainage area, with a finding.</summary>
+    public double? BottomWidthM { get; init; }
+
+    /// <summary>Side slope, horizontal per one vertical.</summary>
+    public double SideSlope { get; init; } = 2;
+
+    /// <summary>Manning's n of the channel.</summary>
+    public double RoughnessN { get; init; } = 0.04;
+
+    /// <summary>Bed slope; null to take it from the terrain below the outlet.</summary>
+    public double? SlopeMPerM { get; init; }
+}
+
+/// <summary>Settings of a study; SI.</summary>
+public sealed record StudySettings
+{
+    /// <summary>System of units of the results.</summary>
+    public UnitSystem Units { get; init; } = UnitSystem.Si;
+
+    /// <summary>Drainage area at which a stream begins, m2.</summary>
+    public double StreamAreaM2 { get; init; } = 1e5;
+
+    /// <summary>How far a given point may be moved, m.</summary>
+    public double SnapM { get; init; } = 60;
+
+    /// <summary>Largest edge contact for which a size is still issued, 0-1.</summary>
+    public double AcceptedEdgeContactShare { get; init; }
+
+    /// <summary>How flows are computed.</summary>
+    public required FlowSettings Flow { get; init; }
+
+    /// <summary>Rational C where no land cover is given.</summary>
+    public double? RunoffCoefficient { get; init; }
+
+    /// <summary>Design flood of every road, years; null to take each class's.</summary>
+    public double? DesignReturnPeriodYr { get; init; }
+
+    /// <summary>Check flood of every road, years; null to take each class's.</summary>
+    public double? CheckReturnPeriodYr { get; init; }
+
+    /// <summary>What may be built.</summary>
+    public required CulvertCatalogue Catalogue { get; init; }
+
+    /// <summary>What a culvert must meet.</summary>
+    public required SizingCriteria Criteria { get; init; }
+
+    /// <summary>Smallest rise of every road, m; null to take each class's.</summary>
+    public double? SmallestRiseM { get; init; }
+
+    /// <summary>Water level at the outlet.</summary>
+    public TailwaterSettings Tailwater { get; init; } = new();
+}
+
+/// <summary>Runs the stages of a study one after another; the shell times them and shows their progress.</summary>
+public interface IStages
+{
+    /// <summary>Runs one stage.</summary>
+    /// <param name="name">Name, as in <c>run.json</c>.</param>
+    /// <param name="cells">Cells it works on, or null.</param>
+    /// <param name="work">The work; reports the share done, 0-1.</param>
+    T Run<T>(string name, long? cells, Func<IProgress<double>, T> work);
+}
+
+/// <summary>The outcome of a study.</summary>
+/// <param name="Terrain">The drained terrain.</param>
+/// <param name="Crossings">Crossings in order of road and station, or as given.</param>
+/// <param name="Streams">Streams.</param>
+/// <param name="Roads">Roads.</param>
+/// <param name="Findings">All findings, those of crossings included.</param>
+public sealed record StudyResult(
+    DrainedTerrain Terrain,
+    IReadOnlyList<CrossingResult> Crossings,
+    IReadOnlyList<StreamResult> Streams,
+    IReadOnlyList<RoadResult> Roads,
+    IReadOnlyList<Finding> Findings)
+{
+    /// <summary>Every layer and table, in output units.</summary>
+    /// <param name="units">System of units.</param>
+    /// <param name="run">Keys and values of the run table.</param>
+    public IReadOnlyList<ResultLayer> Layers(UnitSystem units, IEnumerable<(string Key, string Value)> run) =>
+    [
+        ResultLayers.Crossings.Build(Crossings, units),
+        ResultLayers.Watersheds.Build(Crossings, units),
+        ResultLayers.LocalWatersheds.Build(Crossings, units),
+        ResultLayers.FlowPaths.Build(Crossings.Where(c => c.Watershed.FlowPath is not null), units),
+        ResultLayers.Streams.Build(Streams, units),
+        ResultLayers.Roads.Build(Roads, units),
+        ResultLayers.Culverts.Build(Crossings.Where(c => c.Barrel?.Line is not null), units),
+        ResultLayers.Flows.Build(Crossings.SelectMany(c => c.Sheet.Flows.Select(f => (c.CrossingId, f))), units),
+        ResultLayers.Options.Build(Crossings.SelectMany(c => c.Options.Select((o, i) => (c.CrossingId, i + 1, o))), units),
+        ResultLayers.Ratings.Build(Crossings.SelectMany(c => c.Rating.Select(p => (c.CrossingId, p))), units),
+        ResultLayers.Findings.Build(Findings, units),
+        ResultLayers.Run.Build(run, units),
+    ];
+}
