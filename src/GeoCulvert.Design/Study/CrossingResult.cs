@@ -164,6 +164,9 @@ public sealed record CrossingResult
     /// <summary>The chosen culvert, or null.</summary>
     public CulvertResult? Culvert { get; init; }
 
+    /// <summary>The lowest of all limits on the design headwater, m; null when nothing was asked of the search.</summary>
+    public double? HeadwaterLimitElevationM { get; init; }
+
     /// <summary>Options in the order of the search: the chosen first.</summary>
     public IReadOnlyList<SheetOption> Options { get; init; } = [];
 

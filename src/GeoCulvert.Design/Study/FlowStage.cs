@@ -31,7 +31,23 @@ public sealed record FlowResult(
     IReadOnlyList<DesignFlow> Flows,
     DesignFlow Design,
     DesignFlow Check,
-    IReadOnlyList<Finding> Findings);
+    IReadOnlyList<Finding> Findings)
+{
+    /// <summary>The same with floods given for this crossing in place of the methods' values; the methods' flows stay beside them.</summary>
+    public FlowResult WithGiven(double? designM3PerS, double? checkM3PerS, string origin)
+    {
+        DesignFlow Replace(DesignFlow flow, double? given)
+        {
+            if (given is not { } q) return flow;
+            var peak = new PeakFlow("given", flow.ReturnPeriodYr, q, null, null, [new Step("flow_m3_s", q, "m3/s", "", origin)], []);
+            return flow with { Chosen = peak, All = [peak, .. flow.All] };
+        }
+
+        if (designM3PerS is null && checkM3PerS is null) return this;
+        var (design, check) = (Replace(Design, designM3PerS), Replace(Check, checkM3PerS));
+        return this with { Design = design, Check = check, Flows = [.. Flows.Select(f => f == Design ? design : f == Check ? check : f)] };
+    }
+}
 
 /// <summary>From a catchment to its flows.</summary>
 public static class FlowStage

@@ -50,6 +50,7 @@ public static class ResultLayers
             Text<CrossingResult>("control", "Control", "Control at the design flood: inlet or outlet.", c => c.Culvert?.Control),
             Real<CrossingResult>("headwater_depth", QuantityKind.Length, "Headwater depth", "Headwater above the inlet invert at the design flood.", c => c.Culvert?.HeadwaterDepthM),
             Real<CrossingResult>("headwater_elevation", QuantityKind.Length, "Headwater", "Headwater elevation at the design flood.", c => c.Culvert?.HeadwaterElevationM),
+            Real<CrossingResult>("headwater_limit_elevation", QuantityKind.Length, "Headwater limit", "The lowest of all limits on the design headwater.", c => c.HeadwaterLimitElevationM),
             Real<CrossingResult>("hw_over_d", QuantityKind.None, "HW/D", "Headwater depth over rise at the design flood.", c => c.Culvert?.HeadwaterOverRise),
             Real<CrossingResult>("outlet_velocity", QuantityKind.Velocity, "Outlet velocity", "Velocity at the outlet at the design flood.", c => c.Culvert?.OutletVelocityMPerS),
             Real<CrossingResult>("overtopping_return_period", QuantityKind.Years, "Overtopped at", "Shortest return period asked for at which the road is overtopped; empty when none.", c => c.Culvert?.OvertoppingReturnPeriodYr),

@@ -41,14 +41,19 @@ internal static class RingStitching
         {
             used[i] = true;
             long corner = edges[i] >> 2;
-            if (placeOf.TryGetValue(corner, out var place))
+            // Only a corner with two ways out can come twice; the codes of one corner lie side by side.
+            if ((i > 0 && edges[i - 1] >> 2 == corner) || (i + 1 < edges.Length && edges[i + 1] >> 2 == corner))
             {
-                rings.Add(way.GetRange(place, way.Count - place));
-                for (var k = place; k < way.Count; k++) placeOf.Remove(way[k]);
-                way.RemoveRange(place, way.Count - place);
+                if (placeOf.TryGetValue(corner, out var place))
+                {
+                    rings.Add(way.GetRange(place, way.Count - place));
+                    for (var k = place; k < way.Count; k++) placeOf.Remove(way[k]);
+                    way.RemoveRange(place, way.Count - place);
+                }
+
+                placeOf[corner] = way.Count;
             }
 
-            placeOf[corner] = way.Count;
             way.Add(corner);
             var direction = (int)(edges[i] & 3);
             var next = corner + direction switch { 0 => 1, 1 => -across, 2 => -1, _ => across };

@@ -1,5 +1,7 @@
+using GeoCulvert.Design.Crossings;
 using GeoCulvert.Design.Terrain;
 using GeoCulvert.Design.Watersheds;
+using NetTopologySuite.Geometries;
 
 namespace GeoCulvert.Design.Tests.Watersheds;
 
@@ -56,5 +58,22 @@ public class WatershedSurveyTests
         var all = WatershedSurvey.Survey(labels, [-1], new Grid<float>(Frame))[0];
         Assert.Equal(1, all.Total.EdgeContactShare);
         Assert.Contains(all.Findings, f => f.Code == "watershed-edge-contact" && f.Value == 1);
+    }
+
+    [Fact]
+    public void CrossingsOnOneCellHaveOneWatershed()
+    {
+        // A plane falling south at 10 %: the cell in row 3, column 2 drains rows 0-3 of its column; two crossings lie on it and one upstream.
+        var elevation = new Grid<float>(Frame);
+        for (var row = 0; row < 6; row++)
+            for (var column = 0; column < 6; column++) elevation[row, column] = 100 - row;
+        var terrain = Drainage.Solve(elevation, cancel: TestContext.Current.CancellationToken);
+        Crossing At(string id, int cell) => new(id, CrossingOrigin.Found, new Coordinate(25, 25), cell, 0);
+        var survey = WatershedSurvey.Survey(terrain, [At("A", 20), At("B", 20), At("C", 8)]).Watersheds;
+        Assert.Equal([400.0, 400.0, 200.0], survey.Select(w => w.Total.AreaM2));
+        Assert.Equal([200.0, 200.0, 200.0], survey.Select(w => w.Local.AreaM2));
+        Assert.Equal(30, survey[0].Total.LongestFlowPath!.LengthM, 6);
+        Assert.All(survey[1].Findings, f => Assert.Equal("B", f.CrossingId));
+        Assert.Contains(survey[2].Findings, f => f.Code == "watershed-edge-contact");
     }
 }
