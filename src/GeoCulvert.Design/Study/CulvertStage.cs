@@ -1,0 +1,110 @@
+using GeoCulvert.Design.Basis;
+using GeoCulvert.Design.Crossings;
+using GeoCulvert.Design.Hydraulics;
+using GeoCulvert.Design.Sizing;
+using GeoCulvert.Design.Terrain;
+using GeoCulvert.Design.Watersheds;
+
+namespace GeoCulvert.Design.Study;
+
+/// <summary>What came of sizing one crossing.</summary>
+/// <param name="Status">One of <see cref="CrossingStatus"/>.</param>
+/// <param name="Line">Where the barrel lies.</param>
+/// <param name="Request">What was asked of the search; null when it could not be asked.</param>
+/// <param name="Outcome">Its answer.</param>
+/// <param name="Findings">Doubts.</param>
+public sealed record CulvertStageResult(
+    string Status, CulvertLine Line, SizingRequest? Request, SizingOutcome? Outcome, IReadOnlyList<Finding> Findings);
+
+/// <summary>Where a flow meets a barrel: line, road, tailwater, criteria, search.</summary>
+public static class CulvertStage
+{
+    /// <summary>Outlet velocity above which a finding is raised, m/s (common practice: unprotected natural channels bear less).</summary>
+    public const double HighVelocityMPerS = 4;
+
+    /// <summary>Sizes the culvert of one crossing.</summary>
+    public static CulvertStageResult Size(
+        Crossing crossing, Watershed watershed, FlowResult flow, RoadClass? roadClass, DrainedTerrain terrain, Grid<float> filledDepth, StudyInputs inputs, StudySettings settings)
+    {
+        ArgumentNullException.ThrowIfNull(crossing);
+        ArgumentNullException.ThrowIfNull(watershed);
+        ArgumentNullException.ThrowIfNull(flow);
+        ArgumentNullException.ThrowIfNull(inputs);
+        ArgumentNullException.ThrowIfNull(settings);
+        double? Given(string column) => inputs.Overrides.Of(crossing.Id, column);
+        var line = CulvertLineSurvey.Measure(crossing, terrain.Direction, terrain.Accumulation, terrain.Elevation, filledDepth, new CrossingOverrides(crossing.Id)
+        {
+            InletElevationM = Given("inlet_elevation"),
+            OutletElevationM = Given("outlet_elevation"),
+            LengthM = Given("length"),
+            RoadElevationM = Given("road_elevation"),
+        });
+        var findings = line.Findings.ToList();
+        var edge = watershed.Total.EdgeContactShare;
+        if (edge > settings.AcceptedEdgeContactShare)
+        {
+            findings.Add(StudyFindings.SizeWithheld.With($"{100 * edge:0.0} % of the boundary on the edge", edge, settings.AcceptedEdgeContactShare));
+            return new CulvertStageResult(CrossingStatus.NotComputed, line, null, null, findings);
+        }
+
+        var missing = Missing(line, flow);
+        if (missing.Count > 0)
+        {
+            findings.Add(StudyFindings.CulvertNotComputed.With("missing: " + string.Join(", ", missing)));
+            return new CulvertStageResult(CrossingStatus.NotComputed, line, null, null, findings);
+        }
+
+        var tailwater = TailwaterStage.For(
+            crossing, terrain, watershed.Total.AreaM2, line.OutletElevation!.Value, settings.Tailwater, Given("tailwater_elevation"), findings);
+        var criteria = settings.Criteria with
+        {
+            LargestHeadwaterRatio = Given("hw_over_d") ?? settings.Criteria.LargestHeadwaterRatio,
+            HighestHeadwaterElevationM = Given("highest_headwater_elevation") ?? settings.Criteria.HighestHeadwaterElevationM,
+            SmallestRiseM = Given("smallest_rise") ?? settings.SmallestRiseM ?? roadClass?.SmallestRiseM ?? 0,
+        };
+        var request = new SizingRequest(
+            settings.Catalogue, criteria, flow.Design.FlowM3PerS!.Value, flow.Check.FlowM3PerS!.Value, line.Length!.Value, line.InletElevation!.Value,
+            line.OutletElevation.Value, tailwater, Crest(crossing, line));
+        var outcome = CulvertSizing.Choose(request);
+        if (outcome.Chosen is not { } chosen)
+        {
+            var closest = outcome.Closest;
+            findings.Add(StudyFindings.NoSizeFits.With(closest is null
+                ? "the catalogue is empty"
+                : $"closest: {closest.Description}: " + string.Join("; ", closest.Criteria.Where(c => !c.IsMet).Select(c => $"{c.Name} {c.Value:0.00}, limit {c.Limit:0.00}"))));
+            return new CulvertStageResult(CrossingStatus.NoSizeFits, line, request, outcome, findings);
+        }
+
+        findings.AddRange(chosen.Design.Findings.Concat(chosen.Check.Findings).DistinctBy(f => f.Code));
+        if (chosen.Design.OutletVelocityMPerS > HighVelocityMPerS)
+            findings.Add(StudyFindings.OutletVelocityHigh.With($"{chosen.Design.OutletVelocityMPerS:0.0} m/s", chosen.Design.OutletVelocityMPerS, HighVelocityMPerS));
+        return new CulvertStageResult(CrossingStatus.Sized, line, request, outcome, findings);
+    }
+
+    private static List<string> Missing(CulvertLine line, FlowResult flow)
+    {
+        var missing = new List<string>();
+        if (flow.Design.FlowM3PerS is null) missing.Add("design flow");
+        if (flow.Check.FlowM3PerS is null) missing.Add("check flow");
+        if (line.Length is null || line.Length.Value <= 0) missing.Add("barrel length");
+        if (line.InletElevation is null) missing.Add("inlet invert");
+        if (line.OutletElevation is null) missing.Add("outlet invert");
+        return missing;
+    }
+
+    /// <summary>The road as a weir: its profile near the crossing, or a level given for it.</summary>
+    private static RoadCrest? Crest(Crossing crossing, CulvertLine line)
+    {
+        if (line.LowestRoadElevation is not { } lowest) return null;
+        var surface = crossing.Road?.Surface == "gravel" ? RoadSurface.Gravel : RoadSurface.Paved;
+        var width = crossing.Road?.WidthM ?? 8;
+        var points = line.Profile?.Points;
+        if (lowest.Origin == FigureOrigin.Given || points is not { Count: > 1 })
+        {
+            var length = points is { Count: > 1 } ? points[^1].StationM - points[0].StationM : 100;
+            return RoadCrest.Level(lowest.Value, length, width, surface);
+        }
+
+        return new RoadCrest([.. points.Select(p => (p.StationM, p.ElevationM))], width, surface);
+    }
+}

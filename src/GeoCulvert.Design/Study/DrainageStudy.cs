@@ -1,0 +1,113 @@
+using GeoCulvert.Design.Basis;
+using GeoCulvert.Design.Crossings;
+using GeoCulvert.Design.Terrain;
+using GeoCulvert.Design.Watersheds;
+using NetTopologySuite.Geometries;
+
+namespace GeoCulvert.Design.Study;
+
+/// <summary>The pipeline: terrain, crossings, watersheds, flows, culverts.</summary>
+public static class DrainageStudy
+{
+    /// <summary>Runs a whole study.</summary>
+    /// <param name="inputs">Maps and tables, in one plane and SI.</param>
+    /// <param name="settings">Settings.</param>
+    /// <param name="stages">Runs and times the stages.</param>
+    /// <param name="cancel">Stops the work between and inside stages.</param>
+    public static StudyResult Run(StudyInputs inputs, StudySettings settings, IStages stages, CancellationToken cancel = default)
+    {
+        ArgumentNullException.ThrowIfNull(inputs);
+        ArgumentNullException.ThrowIfNull(settings);
+        ArgumentNullException.ThrowIfNull(stages);
+        var frame = inputs.Elevation.Frame;
+
+        // Make water leave: depressions filled, flats drained, directions and accumulation.
+        var terrain = stages.Run("terrain", frame.Count, p => Drainage.Solve(inputs.Elevation, p, cancel));
+        cancel.ThrowIfCancellationRequested();
+
+        // Where water crosses the road: found along it, or given and moved to the stream.
+        var streamCells = Math.Max(1, (long)Math.Ceiling(settings.StreamAreaM2 / frame.CellAreaM2));
+        var found = stages.Run("crossings", null, _ => FindCrossings(inputs, settings, terrain, streamCells));
+
+        // The land above every crossing, all in one pass.
+        var watersheds = stages.Run("watersheds", frame.Count, _ => WatershedSurvey.Survey(terrain, found.Crossings));
+        cancel.ThrowIfCancellationRequested();
+
+        // From land to flow, from flow to culvert.
+        var crossings = stages.Run("flows and culverts", null, p => Compute(inputs, settings, terrain, found.Crossings, watersheds, p, cancel));
+
+        var streams = StreamNetwork.Extract(terrain.Direction, terrain.Accumulation, streamCells)
+            .Where(s => s.Cells.Length > 1)
+            .Select(s => new StreamResult(new LineString([.. s.Cells.Select(c => Centre(frame, c))]), s.LowerAccumulationCells * frame.CellAreaM2, s.Order));
+        var roads = inputs.Roads.Select(r => new RoadResult(r.Alignment.Name, r.Class.Name, r.Alignment.Line, r.Alignment.WidthM, r.Alignment.Surface));
+        var whole = terrain.Findings.Concat(found.Findings).Concat(RunFindings(inputs, found.Crossings));
+        return new StudyResult(terrain, crossings, [.. streams], [.. roads], [.. whole.Concat(crossings.SelectMany(c => c.Findings))]);
+    }
+
+    private static CrossingList FindCrossings(StudyInputs inputs, StudySettings settings, DrainedTerrain terrain, long streamCells)
+    {
+        var roads = inputs.Roads.Select(r => r.Alignment).ToArray();
+        var search = new CrossingSearch { Stationing = settings.Units };
+        if (inputs.Points is null) return CrossingFinder.Find(roads, terrain.Direction, terrain.Accumulation, streamCells, search);
+        var snapped = PointSnapping.Snap(
+            inputs.Points, terrain.Direction, terrain.Accumulation, new SnapSettings { SnapM = settings.SnapM, StreamThresholdCells = streamCells });
+        return GivenCrossings.Place(snapped, roads, terrain.Direction, terrain.Accumulation, settings.SnapM, search);
+    }
+
+    private static List<CrossingResult> Compute(
+        StudyInputs inputs, StudySettings settings, DrainedTerrain terrain, IReadOnlyList<Crossing> crossings, CrossingWatersheds watersheds, IProgress<double> progress, CancellationToken cancel)
+    {
+        var catchments = new CatchmentStage(inputs, settings, terrain, watersheds);
+        var filledDepth = FilledDepth(terrain);
+        var idOfOutlet = watersheds.Watersheds.Zip(crossings).GroupBy(p => p.First.Outlet).ToDictionary(g => g.Key, g => g.First().Second.Id);
+        var results = new List<CrossingResult>(crossings.Count);
+        for (var i = 0; i < crossings.Count; i++)
+        {
+            cancel.ThrowIfCancellationRequested();
+            var (crossing, watershed) = (crossings[i], watersheds.Watersheds[i]);
+            var road = inputs.Roads.FirstOrDefault(r => ReferenceEquals(r.Alignment, crossing.Road));
+            double? Given(string column) => inputs.Overrides.Of(crossing.Id, column);
+            var design = Given("design_return_period_yr") ?? road?.DesignReturnPeriodYr ?? settings.DesignReturnPeriodYr ?? (road?.Class ?? RoadClass.Named("local")).DesignReturnPeriodYr;
+            var check = Given("check_return_period_yr") ?? road?.CheckReturnPeriodYr ?? settings.CheckReturnPeriodYr ?? (road?.Class ?? RoadClass.Named("local")).CheckReturnPeriodYr;
+
+            var doubts = crossing.Findings.Concat(watershed.Findings).ToList();
+            var catchment = catchments.For(crossing.Id, watershed, doubts);
+            var flow = FlowStage
+                .Compute(catchment, settings.Flow, design, check, Given("time_of_concentration") / 60)
+                .WithGiven(Given("design_flow"), Given("check_flow"), inputs.Overrides.Origin);
+            doubts.AddRange(flow.Findings);
+            var culvert = CulvertStage.Size(crossing, watershed, flow, road?.Class, terrain, filledDepth, inputs, settings);
+            doubts.AddRange(culvert.Findings);
+
+            var downstream = idOfOutlet.GetValueOrDefault(watershed.ParentOutlet);
+            var findings = doubts.Select(f => f.At(crossing.Id)).DistinctBy(f => (f.Code, f.Text)).OrderByDescending(f => f.Severity).ToList();
+            results.Add(CrossingAssembly.Build(crossing, watershed, flow, culvert, downstream, findings, settings.Units));
+            progress.Report((i + 1.0) / crossings.Count);
+        }
+
+        return results;
+    }
+
+    private static List<Finding> RunFindings(StudyInputs inputs, IReadOnlyList<Crossing> crossings)
+    {
+        var findings = new List<Finding>();
+        if (crossings.Count == 0) findings.Add(StudyFindings.NoCrossing.With("none"));
+        var known = crossings.Select(c => c.Id).ToHashSet(StringComparer.Ordinal);
+        foreach (var id in inputs.Overrides.CrossingIds.Where(id => !known.Contains(id)).Order(StringComparer.Ordinal))
+            findings.Add(StudyFindings.OverrideUnused.With($"'{id}' in {inputs.Overrides.Name}"));
+        var frame = inputs.Elevation.Frame;
+        var terrain = new Envelope(frame.West, frame.East, frame.South, frame.North);
+        foreach (var road in inputs.Roads.Where(r => !terrain.Contains(r.Alignment.Line.EnvelopeInternal)))
+            findings.Add(StudyFindings.RoadLeavesTerrain.With(road.Alignment.Name));
+        return findings;
+    }
+
+    private static Grid<float> FilledDepth(DrainedTerrain terrain)
+    {
+        var depth = new Grid<float>(terrain.Elevation.Frame);
+        for (var i = 0; i < depth.Cells.Length; i++) depth.Cells[i] = terrain.Filled.Surface.Cells[i] - terrain.Elevation.Cells[i];
+        return depth;
+    }
+
+    private static Coordinate Centre(GridFrame frame, int cell) => new(frame.CentreX(cell % frame.Columns), frame.CentreY(cell / frame.Columns));
+}
