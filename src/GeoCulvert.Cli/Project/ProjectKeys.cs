@@ -50,7 +50,7 @@ internal static class ProjectKeys
         new("crossings", "layer", KeyKind.Text, null, "layer in the file; default: its first"),
         new("crossings", "where", KeyKind.Text, null, "filter on the fields"),
         new("crossings", "id", KeyKind.Text, null, "field that holds the crossing id; default: numbered in the order of the file"),
-        Length("crossings", "snap", "\"60 m\"", "how far a given point may be moved to its stream", 0),
+        Length("crossings", "snap", null, "how far a given point may be moved to its stream; default: the larger of 60 m and five cells", 0),
         new("crossings", "overrides", KeyKind.Path, null, "table keyed by crossing_id that sets values of single crossings"),
         new("crossings", "accept_edge_contact", KeyKind.Number, "0.0", "largest share of a watershed's boundary on the edge of the terrain for which a size is still issued") { Least = 0, Most = 1 },
 

@@ -49,9 +49,11 @@ public static class DrainageStudy
         var roads = inputs.Roads.Select(r => r.Alignment).ToArray();
         var search = new CrossingSearch { Stationing = settings.Units };
         if (inputs.Points is null) return CrossingFinder.Find(roads, terrain.Direction, terrain.Accumulation, streamCells, search);
+        var frame = inputs.Elevation.Frame;
+        var snapM = settings.SnapM ?? Math.Max(60, 5 * Math.Max(frame.CellWidthM, frame.CellHeightM));
         var snapped = PointSnapping.Snap(
-            inputs.Points, terrain.Direction, terrain.Accumulation, new SnapSettings { SnapM = settings.SnapM, StreamThresholdCells = streamCells });
-        return GivenCrossings.Place(snapped, roads, terrain.Direction, terrain.Accumulation, settings.SnapM, search);
+            inputs.Points, terrain.Direction, terrain.Accumulation, new SnapSettings { SnapM = snapM, StreamThresholdCells = streamCells });
+        return GivenCrossings.Place(snapped, roads, terrain.Direction, terrain.Accumulation, snapM, search);
     }
 
     private static List<CrossingResult> Compute(

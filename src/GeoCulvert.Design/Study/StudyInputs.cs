@@ -66,8 +66,8 @@ public sealed record StudySettings
     /// <summary>Drainage area at which a stream begins, m2.</summary>
     public double StreamAreaM2 { get; init; } = 1e5;
 
-    /// <summary>How far a given point may be moved, m.</summary>
-    public double SnapM { get; init; } = 60;
+    /// <summary>How far a given point may be moved, m; null for the larger of 60 m and five cells (own rule, measured on published drainage areas).</summary>
+    public double? SnapM { get; init; }
 
     /// <summary>Largest edge contact for which a size is still issued, 0-1.</summary>
     public double AcceptedEdgeContactShare { get; init; }

@@ -30,7 +30,7 @@ public class ProjectFileTests
         Assert.Equal(9.144, file.Roads[0].Needed("width"), 1e-12);
         Assert.Equal(8, file.Roads[1].Needed("width"), 1e-12);
         Assert.Equal([2, 25.5], file["flow"].Numbers("return_periods"));
-        Assert.Equal(60, file["crossings"].Needed("snap"), 1e-12);
+        Assert.Equal(2, file["tailwater"].Needed("side_slope"), 1e-12);
         Assert.Null(file["rainfall"].Text("table"));
         Assert.False(file["crossings"].Has("snap"));
     }

@@ -1,0 +1,146 @@
+using GeoCulvert.Design.Basis;
+using GeoCulvert.Design.Hydraulics;
+using GeoCulvert.Design.Hydrology;
+using GeoCulvert.Design.Sizing;
+using GeoCulvert.Design.Study;
+
+namespace GeoCulvert.Cli.Project;
+
+/// <summary>Rainfall, flow methods, catalogue and criteria of a project.</summary>
+internal sealed partial class StudyLoader
+{
+    private FlowSettings? Flow()
+    {
+        var flow = _project["flow"];
+        var names = flow.Texts("methods");
+        var rainfall = Rainfall(names);
+        var methods = names.Distinct(StringComparer.Ordinal).Select(n => n switch
+        {
+            "rational" => Try<IPeakFlowMethod>(() => new RationalMethod()),
+            "regression" => Try<IPeakFlowMethod>(Regression),
+            _ => Try<IPeakFlowMethod>(Given),
+        }).OfType<IPeakFlowMethod>().ToList();
+        var chosen = flow.Text("choose") ?? names[0];
+        if (!names.Contains(chosen)) _problems.Add(new InputProblem(_project.Place(flow, "choose"), $"\"{chosen}\"", $"one of the methods asked for: {string.Join(", ", names)}"));
+        var times = names.Contains("rational")
+            ? flow.Texts("time_of_concentration").Distinct(StringComparer.Ordinal).Select(t => t == "kirpich" ? (ITimeOfConcentration)new Kirpich() : new NrcsVelocityMethod()).ToArray()
+            : [];
+        var rule = TimeRule(flow, times);
+        return methods.Count < names.Distinct(StringComparer.Ordinal).Count() || (rainfall is null && names.Contains("rational")) || rule is null
+            ? null
+            : new FlowSettings(methods, chosen, flow.Numbers("return_periods"), times, rule, rainfall);
+    }
+
+    private TimeOfConcentrationRule? TimeRule(ProjectTable flow, ITimeOfConcentration[] times)
+    {
+        var least = flow.Needed("smallest_time_of_concentration") / 60;
+        var choice = flow.Text("time_of_concentration_choose") ?? (times.Length > 0 ? times[0].Name : "smallest");
+        if (choice == "median") return new TimeOfConcentrationRule(TimeOfConcentrationChoice.Median, null, least);
+        if (choice == "smallest") return new TimeOfConcentrationRule(TimeOfConcentrationChoice.Smallest, null, least);
+        if (times.Length == 0 || times.Any(t => t.Name == choice)) return new TimeOfConcentrationRule(TimeOfConcentrationChoice.Named, choice, least);
+        _problems.Add(new InputProblem(_project.Place(flow, "time_of_concentration_choose"), $"\"{choice}\"", $"median, smallest, or one of those computed: {string.Join(", ", times.Select(t => t.Name))}"));
+        return null;
+    }
+
+    private RainfallTable? Rainfall(IReadOnlyList<string> methods)
+    {
+        var table = _project["rainfall"];
+        if (!table.Has("table"))
+        {
+            if (methods.Contains("rational"))
+                _problems.Add(new InputProblem($"{_shownName}, [rainfall] table", "no rainfall", "a NOAA Atlas 14 file or a plain table, for example table = \"rain.csv\"; or methods that need none"));
+            return null;
+        }
+
+        var stated = (table.Text("quantity"), table.Text("unit")) switch
+        {
+            ("depth", "mm") => RainfallMeasure.DepthMm,
+            ("depth", "in") => RainfallMeasure.DepthIn,
+            ("intensity", "mm/h") => RainfallMeasure.IntensityMmPerH,
+            ("intensity", "in/h") => RainfallMeasure.IntensityInPerH,
+            _ => (RainfallMeasure?)null,
+        };
+        if (stated is null && (table.Has("quantity") || table.Has("unit")))
+            _problems.Add(new InputProblem(_project.Place(table, table.Has("unit") ? "unit" : "quantity"), "a quantity and a unit that do not go together", "depth with mm or in, intensity with mm/h or in/h"));
+        return Try(() =>
+        {
+            var (name, text) = TextFile("rainfall", "table", "rainfall")!.Value;
+            var rain = RainfallTable.Read(name, text, stated);
+            if (rain.SeriesFinding(_project["flow"].Numbers("return_periods").Min()) is { } note) _findings.Add(note);
+            return rain;
+        });
+    }
+
+    private GivenFlows Given() => TextFile("flow", "given", "given flows") is { } t
+        ? GivenFlows.Read(t.Name, t.Text)
+        : throw new InputException($"{_shownName}, [flow] given", "no table of given flows", "given = \"flows.csv\", since methods names \"given\"");
+
+    private RegressionMethod Regression()
+    {
+        var flow = _project["flow"];
+        if (TextFile("flow", "regression", "regression equations") is not { } t)
+            throw new InputException($"{_shownName}, [flow] regression", "no equations", "regression = \"equations.csv\", since methods names \"regression\"");
+        var sets = t.Name.EndsWith(".toml", StringComparison.OrdinalIgnoreCase) ? RegressionToml.Read(t.Name, t.Text) : RegressionEquationCsv.Read(t.Name, t.Text);
+        var regions = sets.SelectMany(s => s.Regions.Select(r => (Set: s, Region: r))).ToList();
+        var wanted = flow.Text("region") ?? (regions.Count == 1 ? regions[0].Region : null);
+        var match = regions.Where(r => string.Equals(r.Region, wanted, StringComparison.OrdinalIgnoreCase)).ToList();
+        return match.Count == 1
+            ? new RegressionMethod(match[0].Set, match[0].Region)
+            : throw new InputException(_project.Place(flow, "region"), wanted is null ? "no region" : $"'{wanted}'", $"one of the regions {string.Join(", ", regions.Select(r => r.Region))}");
+    }
+
+    private CulvertCatalogue? Catalogue()
+    {
+        var culvert = _project["culvert"];
+        var shapes = culvert.Texts("shapes");
+        var inlets = culvert.Texts("inlets").Select(i => Try(() => InletCatalogue.Find(i, _project.Place(culvert, "inlets")))).OfType<InletType>().ToArray();
+        foreach (var shape in shapes.Where(s => inlets.Length > 0 && inlets.All(i => i.Shape != s)))
+            _problems.Add(new InputProblem(_project.Place(culvert, "inlets"), $"no inlet for the shape {shape}", "an inlet for each shape, or fewer shapes"));
+        return Try(() => CulvertCatalogue.Build(
+            inlets, shapes, culvert.Needed("roughness"), culvert.Number("entrance_loss"), (int)culvert.Needed("largest_number_of_barrels"), Sizes("sizes_circle"), Sizes("sizes_box")));
+    }
+
+    private PublishedTable? Sizes(string key) => TextFile("culvert", key, "sizes") is { } t ? PublishedTable.Parse(t.Name, t.Text) : null;
+
+    private void NeedCoefficient(FlowSettings? flow, bool hasCover)
+    {
+        if (flow is null || hasCover || _project["flow"].Has("runoff_coefficient") || flow.Methods.All(m => m is not RationalMethod)) return;
+        _problems.Add(new InputProblem($"{_shownName}, [flow] runoff_coefficient", "no runoff coefficient", "runoff_coefficient = 0.35 or the like, or [cover] land_cover, since methods names \"rational\""));
+    }
+
+    private StudySettings Settings(FlowSettings flow, CulvertCatalogue catalogue)
+    {
+        var (criteria, tailwater) = (_project["criteria"], _project["tailwater"]);
+        return new StudySettings
+        {
+            Units = _project["study"].Text("units") == "us" ? UnitSystem.Us : UnitSystem.Si,
+            StreamAreaM2 = _project["terrain"].Needed("stream_area"),
+            SnapM = _project["crossings"].Number("snap"),
+            AcceptedEdgeContactShare = _project["crossings"].Needed("accept_edge_contact"),
+            Flow = flow,
+            RunoffCoefficient = _project["flow"].Number("runoff_coefficient"),
+            DesignReturnPeriodYr = _project["flow"].Number("design_return_period"),
+            CheckReturnPeriodYr = _project["flow"].Number("check_return_period"),
+            Catalogue = catalogue,
+            SmallestRiseM = criteria.Number("smallest_rise"),
+            Criteria = new SizingCriteria
+            {
+                LargestHeadwaterRatio = criteria.Needed("hw_over_d"),
+                FreeboardM = criteria.Needed("freeboard"),
+                LargestHeadwaterDepthM = criteria.Number("largest_headwater_depth"),
+                HighestHeadwaterElevationM = criteria.Number("highest_headwater_elevation"),
+                SmallestCoverM = criteria.Needed("smallest_cover"),
+                LargestOutletVelocityMPerS = criteria.Number("largest_outlet_velocity"),
+                LargestOvertoppingDepthM = criteria.Number("largest_overtopping_depth"),
+            },
+            Tailwater = new TailwaterSettings
+            {
+                FixedElevationM = tailwater.Text("method") == "fixed" ? tailwater.Number("elevation") : null,
+                BottomWidthM = tailwater.Number("bottom_width"),
+                SideSlope = tailwater.Needed("side_slope"),
+                RoughnessN = tailwater.Needed("roughness"),
+                SlopeMPerM = tailwater.Number("slope"),
+            },
+        };
+    }
+}
