@@ -58,7 +58,7 @@ public sealed unsafe class Crs : SafeHandle
         {
             nint text = 0;
             using var options = new NativeList("FORMAT=WKT2_2019");
-            Gdal.Check(Native.OSRExportToWktEx(handle, &text, options.Pointer), "Writing a coordinate system as text");
+            Gdal.Check(Native.OSRExportToWktEx(Pointer, &text, options.Pointer), "Writing a coordinate system as text");
             var wkt = Native.Text(text);
             Native.VSIFree(text);
             return wkt;
@@ -68,7 +68,9 @@ public sealed unsafe class Crs : SafeHandle
     /// <summary>"EPSG:26912 NAD83 / UTM zone 12N".</summary>
     public string Label => Code.Length > 0 ? $"{Code} {Name}" : Name;
 
-    internal nint Pointer => handle;
+    internal nint Pointer => IsClosed ? throw new ObjectDisposedException(nameof(Crs)) : handle;
+
+    internal Crs Clone() => new(Native.OSRClone(Pointer));
 
     /// <summary>Reads a coordinate system from "EPSG:26912", well-known text or a PROJ string.</summary>
     /// <exception cref="GdalException">The text is not a coordinate system.</exception>
@@ -94,7 +96,7 @@ public sealed unsafe class Crs : SafeHandle
     public bool IsSameAs(Crs other)
     {
         ArgumentNullException.ThrowIfNull(other);
-        return Native.OSRIsSame(handle, other.handle) != 0;
+        return Native.OSRIsSame(Pointer, other.Pointer) != 0;
     }
 
     internal static Crs? FromBorrowed(nint srs) => srs == 0 ? null : new Crs(Native.OSRClone(srs));

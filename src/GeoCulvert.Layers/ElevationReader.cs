@@ -75,7 +75,7 @@ public static class ElevationReader
             foreach (ref var z in grid.Cells.AsSpan()) z *= factor;
         }
 
-        return new ElevationModel(grid, new WorkingPlane(working), findings);
+        return new ElevationModel(grid, new WorkingPlane(working.Clone()), findings); // the source closes its own
     }
 
     /// <summary>Checks what the file and the project say, without reading a cell.</summary>
