@@ -24,8 +24,8 @@ public static class FlowDirections
         var z = filled.Cells;
         var d = direction.Cells;
         var flat = new List<int>();
-        Span<double> inverse = stackalloc double[9];
-        for (byte k = 1; k <= 8; k++) inverse[k] = 1 / D8.StepLengthM(frame, k);
+        Span<double> length = stackalloc double[9];
+        for (byte k = 1; k <= 8; k++) length[k] = D8.StepLengthM(frame, k);
         var rowStep = D8.RowStep;
         var columnStep = D8.ColumnStep;
         for (var r = 0; r < rows; r++)
@@ -41,7 +41,7 @@ public static class FlowDirections
                 {
                     int nr = r + rowStep[k], nc = c + columnStep[k];
                     if ((uint)nr >= (uint)rows || (uint)nc >= (uint)columns) continue;
-                    var slope = ((double)level - z[(nr * columns) + nc]) * inverse[k];
+                    var slope = ((double)level - z[(nr * columns) + nc]) / length[k];
                     if (slope > best)
                     {
                         best = slope;
