@@ -26,7 +26,7 @@ internal static class CheckCommand
             if (loaded.Inputs.Points is { } points) Console.Out.WriteLine($"  crossings {points.Count} given");
             Console.Out.WriteLine($"  results   {loaded.OutputFolder}");
             foreach (var finding in loaded.Findings.OrderByDescending(f => f.Severity))
-                Console.Out.WriteLine($"  {(finding.Severity == Severity.Note ? "note" : "doubt")}     {finding.Code}: {finding.Text}");
+                Console.Out.WriteLine($"  {(finding.Severity == Severity.Note ? "note" : "doubt")}     {finding.Sentence} [{finding.Code}]");
             return Shell.Done;
         }));
         return command;

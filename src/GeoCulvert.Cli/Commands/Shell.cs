@@ -54,6 +54,11 @@ internal static class Shell
             terminal.Failed($"{e.Message} The former results are untouched.");
             return Failed;
         }
+        catch (Exception e) when (e is InvalidOperationException or ArgumentException or NullReferenceException or IndexOutOfRangeException or ArithmeticException or KeyNotFoundException)
+        {
+            terminal.Failed($"The program failed: {e.Message} This is a defect; please report it with the project file. The former results are untouched.\n{e.StackTrace}");
+            return Failed;
+        }
         catch (OutOfMemoryException)
         {
             terminal.Failed("Not enough memory for this terrain model: name a coarser cell_size, or cut the terrain to the study.");

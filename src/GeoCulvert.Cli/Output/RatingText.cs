@@ -63,7 +63,7 @@ internal static class RatingText
             json.WriteStartObject();
             json.WriteString("code", f.Code);
             json.WriteString("severity", f.Severity.ToString().ToLowerInvariant());
-            json.WriteString("text", f.Text);
+            json.WriteString("text", f.Sentence);
             json.WriteEndObject();
         }
 
@@ -91,7 +91,7 @@ internal static class RatingText
 
         if (ratings.Count <= 3) foreach (var r in ratings) Calculation(output, r);
         foreach (var f in ratings.SelectMany(r => r.Findings).DistinctBy(f => (f.Code, f.Text)).Take(12))
-            output.WriteLine($"{f.Severity.ToString().ToLowerInvariant()}: {f.Code}: {f.Text}. {f.Action}");
+            output.WriteLine($"{f.Severity.ToString().ToLowerInvariant()}: {f.Sentence}. {f.Action} [{f.Code}]");
         output.WriteLine();
         output.WriteLine(GeoCulvert.Report.ReportCaution.Short);
     }

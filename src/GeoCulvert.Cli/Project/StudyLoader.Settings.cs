@@ -23,7 +23,7 @@ internal sealed partial class StudyLoader
         var chosen = flow.Text("choose") ?? names[0];
         if (!names.Contains(chosen)) _problems.Add(new InputProblem(_project.Place(flow, "choose"), $"\"{chosen}\"", $"one of the methods asked for: {string.Join(", ", names)}"));
         var times = names.Contains("rational")
-            ? flow.Texts("time_of_concentration").Distinct(StringComparer.Ordinal).Select(t => t == "kirpich" ? (ITimeOfConcentration)new Kirpich() : new NrcsVelocityMethod()).ToArray()
+            ? flow.Texts("time_of_concentration").Distinct(StringComparer.Ordinal).Select(t => t == "kirpich" ? (ITimeOfConcentration)new Kirpich() : new NrcsVelocityMethod { ChannelAreaM2 = _project["terrain"].Needed("stream_area") }).ToArray()
             : [];
         var rule = TimeRule(flow, times);
         return methods.Count < names.Distinct(StringComparer.Ordinal).Count() || (rainfall is null && names.Contains("rational")) || rule is null

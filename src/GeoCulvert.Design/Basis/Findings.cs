@@ -46,6 +46,9 @@ public sealed record Finding(FindingCode Kind, string Text, double? Value = null
     /// <summary>What the reader should do.</summary>
     public string Action => Kind.Action;
 
+    /// <summary>What was seen and the figures, in one sentence that stands alone: the meaning of the code, a colon, the text.</summary>
+    public string Sentence => $"{Kind.Meaning.TrimEnd('.')}: {Text}";
+
     /// <summary>The same finding, tied to a crossing.</summary>
     public Finding At(string crossingId) => this with { CrossingId = crossingId };
 }

@@ -97,14 +97,17 @@ public static class CulvertHydraulics
         ArgumentOutOfRangeException.ThrowIfNegative(flowM3PerS);
         var tailwater = site.Tailwater.ElevationM(flowM3PerS);
         var barrelFlow = flowM3PerS;
+        var still = Math.Max(site.Barrels.InletElevationM, tailwater);
         if (site.Road is { } road && flowM3PerS > 0 && HeadwaterElevationM(site, flowM3PerS, tailwater) > road.LowestM)
         {
             double Surplus(double through) =>
                 through + RoadOvertopping.FlowM3PerS(road, HeadwaterElevationM(site, through, tailwater), tailwater) - flowM3PerS;
-            barrelFlow = RootFinding.Bracketed(Surplus, 0, flowM3PerS);
+            // A road below the inlet invert takes all the water before any enters the barrel.
+            barrelFlow = Surplus(0) >= 0 ? 0 : RootFinding.Bracketed(Surplus, 0, flowM3PerS);
+            if (barrelFlow == 0) still = RootFinding.Bracketed(z => RoadOvertopping.FlowM3PerS(road, z, tailwater) - flowM3PerS, road.LowestM, Math.Max(still, road.LowestM) + 1e-9);
         }
 
-        var rating = Detail(site, flowM3PerS, barrelFlow, tailwater);
+        var rating = Detail(site, flowM3PerS, barrelFlow, tailwater, still - site.Barrels.InletElevationM);
         return rating with { Findings = Doubts(rating) };
     }
 
@@ -119,12 +122,11 @@ public static class CulvertHydraulics
         return b.InletElevationM + Math.Max(inlet, outlet);
     }
 
-    private static CulvertRating Detail(CulvertSite site, double total, double barrelFlow, double tailwater)
+    private static CulvertRating Detail(CulvertSite site, double total, double barrelFlow, double tailwater, double still)
     {
         var b = site.Barrels;
         var flow = barrelFlow / b.Count;
         var depth = tailwater - b.OutletElevationM;
-        var still = Math.Max(0, tailwater - b.InletElevationM);
         if (flow <= 0)
         {
             return new CulvertRating

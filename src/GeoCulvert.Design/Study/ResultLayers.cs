@@ -174,7 +174,7 @@ public static class ResultLayers
             Text<Finding>("code", "Code", "Stable code, listed in docs/formats/findings.md.", f => f.Code),
             Text<Finding>("severity", "Severity", "error, warning or note.", f => f.Severity.ToString().ToLowerInvariant()),
             Text<Finding>("crossing_id", "Crossing", "Crossing it is about; empty for the whole run.", f => f.CrossingId),
-            Text<Finding>("text", "Text", "What was found, with figures (SI) and units.", f => f.Text),
+            Text<Finding>("text", "Text", "What was seen, with figures (SI) and units.", f => f.Sentence),
             Real<Finding>("value", QuantityKind.None, "Value", "The figure that was found, where there is one; SI.", f => f.Value),
             Real<Finding>("limit", QuantityKind.None, "Limit", "The limit it was held against; SI.", f => f.Limit),
             Text<Finding>("action", "Action", "What to do.", f => f.Action),

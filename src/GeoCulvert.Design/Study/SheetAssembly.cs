@@ -44,7 +44,7 @@ internal static class SheetAssembly
         Fact("Station", crossing.StationM, QuantityKind.Length, "measured along the road"),
         Fact("x", crossing.Point.X, QuantityKind.Length, "working coordinate system"),
         Fact("y", crossing.Point.Y, QuantityKind.Length, "working coordinate system"),
-        Fact("Moved to the stream by", crossing.MovedM > 0 ? crossing.MovedM : null, QuantityKind.Length, "measured"),
+        .. crossing.MovedM > 0 ? new[] { Fact("Moved to the stream by", crossing.MovedM, QuantityKind.Length, "measured") } : [],
         Fact("Skew", crossing.SkewDeg, QuantityKind.Angle, "flow against the perpendicular to the road"),
     ]);
 

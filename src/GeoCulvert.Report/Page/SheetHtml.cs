@@ -81,7 +81,7 @@ internal sealed class SheetHtml
     public static void FindingItem(StringBuilder html, Finding finding)
     {
         var severity = finding.Severity.ToString().ToLowerInvariant();
-        html.Append("<li><span class=\"b ").Append(severity).Append("\">").Append(severity).Append("</span> <span>").Append(HtmlText.Isolated(finding.Text)).Append(" <em>").Append(E(finding.Action))
+        html.Append("<li><span class=\"b ").Append(severity).Append("\">").Append(severity).Append("</span> <span>").Append(HtmlText.Isolated(finding.Sentence)).Append(" <em>").Append(E(finding.Action))
             .Append("</em> <code>").Append(E(finding.Code)).Append("</code></span></li>");
     }
 

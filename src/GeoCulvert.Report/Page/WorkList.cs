@@ -85,7 +85,7 @@ internal static class WorkList
         var (errors, warnings, notes) = (entry.Count(Severity.Error), entry.Count(Severity.Warning), entry.Count(Severity.Note));
         var urgency = (errors * 1e6) + (warnings * 1e3) + notes;
         html.Append("<td class=\"fi\" data-v=\"").Append(urgency.ToString("F0", CultureInfo.InvariantCulture)).Append("\" title=\"")
-            .Append(HtmlText.Escape(entry.Findings.Count > 0 ? entry.Findings[0].Text : "No findings")).Append("\">");
+            .Append(HtmlText.Escape(entry.Findings.Count > 0 ? entry.Findings[0].Sentence : "No findings")).Append("\">");
         Badge("error", errors);
         Badge("warning", warnings);
         Badge("note", notes);
