@@ -13,8 +13,9 @@ namespace GeoCulvert.Design.Study;
 /// <param name="Request">What was asked of the search; null when it could not be asked.</param>
 /// <param name="Outcome">Its answer.</param>
 /// <param name="Findings">Doubts.</param>
+/// <param name="IsRoadLevelAssumed">Whether the road level is the least that serves, because the terrain shows no embankment.</param>
 public sealed record CulvertStageResult(
-    string Status, CulvertLine Line, SizingRequest? Request, SizingOutcome? Outcome, IReadOnlyList<Finding> Findings);
+    string Status, CulvertLine Line, SizingRequest? Request, SizingOutcome? Outcome, IReadOnlyList<Finding> Findings, bool IsRoadLevelAssumed = false);
 
 /// <summary>Where a flow meets a barrel: line, road, tailwater, criteria, search.</summary>
 public static class CulvertStage
@@ -32,13 +33,15 @@ public static class CulvertStage
         ArgumentNullException.ThrowIfNull(inputs);
         ArgumentNullException.ThrowIfNull(settings);
         double? Given(string column) => inputs.Overrides.Of(crossing.Id, column);
-        var line = CulvertLineSurvey.Measure(crossing, terrain.Direction, terrain.Accumulation, terrain.Elevation, filledDepth, new CrossingOverrides(crossing.Id)
-        {
-            InletElevationM = Given("inlet_elevation"),
-            OutletElevationM = Given("outlet_elevation"),
-            LengthM = Given("length"),
-            RoadElevationM = Given("road_elevation"),
-        });
+        CulvertLine Measure(double? roadElevationM) => CulvertLineSurvey.Measure(
+            crossing, terrain.Direction, terrain.Accumulation, terrain.Elevation, filledDepth, new CrossingOverrides(crossing.Id)
+            {
+                InletElevationM = Given("inlet_elevation"),
+                OutletElevationM = Given("outlet_elevation"),
+                LengthM = Given("length"),
+                RoadElevationM = roadElevationM,
+            });
+        var line = Measure(Given("road_elevation"));
         var findings = line.Findings.ToList();
         var edge = watershed.Total.EdgeContactShare;
         if (edge > settings.AcceptedEdgeContactShare)
@@ -54,17 +57,31 @@ public static class CulvertStage
             return new CulvertStageResult(CrossingStatus.NotComputed, line, null, null, findings);
         }
 
-        var tailwater = TailwaterStage.For(
-            crossing, terrain, watershed.Total.AreaM2, line.OutletElevation!.Value, settings.Tailwater, Given("tailwater_elevation"), findings);
         var criteria = settings.Criteria with
         {
             LargestHeadwaterRatio = Given("hw_over_d") ?? settings.Criteria.LargestHeadwaterRatio,
             HighestHeadwaterElevationM = Given("highest_headwater_elevation") ?? settings.Criteria.HighestHeadwaterElevationM,
             SmallestRiseM = Given("smallest_rise") ?? settings.SmallestRiseM ?? roadClass?.SmallestRiseM ?? 0,
         };
-        var request = new SizingRequest(
-            settings.Catalogue, criteria, flow.Design.FlowM3PerS!.Value, flow.Check.FlowM3PerS!.Value, line.Length!.Value, line.InletElevation!.Value,
-            line.OutletElevation.Value, tailwater, Crest(crossing, line));
+        SizingRequest Ask(CulvertLine at, RoadCrest? road, List<Finding> doubts) => new(
+            settings.Catalogue, criteria, flow.Design.FlowM3PerS!.Value, flow.Check.FlowM3PerS!.Value, at.Length!.Value, at.InletElevation!.Value, at.OutletElevation!.Value,
+            TailwaterStage.For(crossing, terrain, watershed.Total.AreaM2, at.OutletElevation.Value, settings.Tailwater, Given("tailwater_elevation"), doubts), road);
+
+        var assumed = false;
+        if (ShowsNoEmbankment(crossing, line, terrain, criteria) && CulvertSizing.Choose(Ask(line, null, [])).Chosen is { } first)
+        {
+            // The terrain cannot say where the road will be: lay the barrel under the least road that serves it.
+            var level = LeastRoadLevelM(first, criteria);
+            var under = Measure(level);
+            if (Missing(under, flow).Count == 0)
+            {
+                (line, assumed) = (under, true);
+                findings = [.. under.Findings.Where(f => f.Kind != CrossingFindings.RoadLevelFromDem)];
+                findings.Add(StudyFindings.RoadLevelAssumed.With($"least level that serves: {level:0.00} m; the ground at the crossing lies at {first.Barrels.InletElevationM:0.00} m", level));
+            }
+        }
+
+        var request = Ask(line, Crest(crossing, line), findings);
         var outcome = CulvertSizing.Choose(request);
         if (outcome.Chosen is not { } chosen)
         {
@@ -72,13 +89,33 @@ public static class CulvertStage
             findings.Add(StudyFindings.NoSizeFits.With(closest is null
                 ? "the catalogue is empty"
                 : $"closest: {closest.Description}: " + string.Join("; ", closest.Criteria.Where(c => !c.IsMet).Select(c => $"{c.Name} {c.Value:0.00}, limit {c.Limit:0.00}"))));
-            return new CulvertStageResult(CrossingStatus.NoSizeFits, line, request, outcome, findings);
+            return new CulvertStageResult(CrossingStatus.NoSizeFits, line, request, outcome, findings, assumed);
         }
 
         findings.AddRange(chosen.Design.Findings.Concat(chosen.Check.Findings).DistinctBy(f => f.Code));
         if (chosen.Design.OutletVelocityMPerS > HighVelocityMPerS)
             findings.Add(StudyFindings.OutletVelocityHigh.With($"{chosen.Design.OutletVelocityMPerS:0.0} m/s", chosen.Design.OutletVelocityMPerS, HighVelocityMPerS));
-        return new CulvertStageResult(CrossingStatus.Sized, line, request, outcome, findings);
+        return new CulvertStageResult(CrossingStatus.Sized, line, request, outcome, findings, assumed);
+    }
+
+    /// <summary>
+    /// Whether the road level is only the terrain's and cannot be a road over a culvert: no room for the smallest barrel and its cover, or cells wider than the road.
+    /// </summary>
+    private static bool ShowsNoEmbankment(Crossing crossing, CulvertLine line, DrainedTerrain terrain, SizingCriteria criteria)
+    {
+        if (line.Profile is not { Origin: RoadLevelOrigin.Terrain } || line.LowestRoadElevation is { Origin: FigureOrigin.Given }) return false;
+        var frame = terrain.Elevation.Frame;
+        return Math.Max(frame.CellWidthM, frame.CellHeightM) > crossing.Road!.WidthM
+            || !(line.LowestRoadElevation?.Value - line.InletElevation?.Value >= criteria.SmallestRiseM + criteria.SmallestCoverM);
+    }
+
+    private static double LeastRoadLevelM(SizingOption option, SizingCriteria criteria)
+    {
+        var level = Math.Max(
+            option.Design.HeadwaterElevationM + criteria.FreeboardM,
+            option.Barrels.InletElevationM + option.Barrels.Section.RiseM + criteria.SmallestCoverM);
+        // Up to the next decimetre, so that a longer barrel under the raised road keeps its freeboard.
+        return Math.Ceiling((level + 0.05) * 10) / 10;
     }
 
     private static List<string> Missing(CulvertLine line, FlowResult flow)

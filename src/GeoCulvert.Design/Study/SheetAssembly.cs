@@ -9,6 +9,7 @@ namespace GeoCulvert.Design.Study;
 internal static class SheetAssembly
 {
     private const int OptionsShown = 12;
+    private const string Assumed = "assumed: the least level that serves";
 
     public static CrossingSheet Build(
         Crossing crossing, WatershedResult land, FlowResult flow, CulvertStageResult culvert, IReadOnlyList<SheetRatingPoint> rating,
@@ -83,8 +84,8 @@ internal static class SheetAssembly
             Of("Inlet invert", line.InletElevation),
             Of("Outlet invert", line.OutletElevation),
             Fact("Slope", line.SlopeMPerM, QuantityKind.Slope, "fall over length"),
-            Of("Road level at the crossing", line.RoadElevation),
-            Of("Lowest road level", line.LowestRoadElevation),
+            Of("Road level at the crossing", line.RoadElevation) with { Origin = culvert.IsRoadLevelAssumed ? Assumed : line.RoadElevation?.How ?? "not known" },
+            Of("Lowest road level", line.LowestRoadElevation) with { Origin = culvert.IsRoadLevelAssumed ? Assumed : line.LowestRoadElevation?.How ?? "not known" },
             Fact("Tailwater", culvert.Request?.Tailwater.Description ?? "not computed", ""),
         ]);
     }

@@ -20,6 +20,11 @@ public static class StudyFindings
         "culvert-not-computed", Severity.Error, "The culvert could not be computed because something it needs is missing.",
         "Give what is missing in the project file or in the table of overrides.");
 
+    /// <summary>Road level assumed.</summary>
+    public static readonly FindingCode RoadLevelAssumed = new(
+        "road-level-assumed", Severity.Warning, "The terrain model shows no embankment at the crossing, so the road was assumed at the least level that serves the culvert.",
+        "Give the road's profile, or lines with elevations; or plan the road at least this high.");
+
     /// <summary>Channel below the outlet assumed.</summary>
     public static readonly FindingCode TailwaterAssumed = new(
         "tailwater-channel-assumed", Severity.Warning, "The channel below the outlet was assumed from the drainage area.",
@@ -45,7 +50,7 @@ public static class StudyFindings
         "no-crossing", Severity.Warning, "No crossing was found.",
         "Check that the road meets the terrain model, and whether stream_area is too large.");
 
-    /// <summary>Land cover missing.</summary>
+    /// <summary>Road beyond the terrain.</summary>
     public static readonly FindingCode RoadLeavesTerrain = new(
         "road-leaves-terrain", Severity.Warning, "Part of a road lies outside the terrain model; crossings there are not found.",
         "Extend the terrain model along the road.");

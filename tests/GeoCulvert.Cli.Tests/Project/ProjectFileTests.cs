@@ -89,9 +89,14 @@ public class ProjectFileTests
         Assert.DoesNotContain(Parse(uncommented).Problems, p => p.Found.Contains("unknown", StringComparison.Ordinal));
     }
 
+    /// <summary>With GEOCULVERT_WRITE_DOCS=1 in the environment the page is written instead of compared.</summary>
     [Fact]
-    public void ThePublishedSchemaIsTheProgramsOwn() =>
-        Assert.Equal(File.ReadAllText(Path.Combine(Root(), "docs", "formats", "project.schema.json")), ProjectSchema.Write());
+    public void ThePublishedSchemaIsTheProgramsOwn()
+    {
+        var path = Path.Combine(Root(), "docs", "formats", "project.schema.json");
+        if (Environment.GetEnvironmentVariable("GEOCULVERT_WRITE_DOCS") == "1") File.WriteAllText(path, ProjectSchema.Write());
+        Assert.Equal(File.ReadAllText(path), ProjectSchema.Write());
+    }
 
     internal static string Root()
     {
