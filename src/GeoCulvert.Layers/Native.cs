@@ -115,7 +115,7 @@ internal static unsafe partial class Native
 /// <summary>A null-terminated list of UTF-8 strings for GDAL, freed at the end of its scope.</summary>
 internal readonly struct NativeList : IDisposable
 {
-    private readonly nint[] _texts;
+    private readonly nint[]? _texts;
 
     public NativeList(params IReadOnlyList<string> items)
     {
@@ -129,6 +129,7 @@ internal readonly struct NativeList : IDisposable
 
     public void Dispose()
     {
+        if (_texts is null) return; // the default value: no list, pointer 0, which GDAL takes as an empty one
         foreach (var text in _texts) Marshal.FreeCoTaskMem(text);
         Marshal.FreeHGlobal(Pointer);
     }

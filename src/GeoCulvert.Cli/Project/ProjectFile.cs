@@ -204,7 +204,9 @@ internal sealed class ProjectFile
         {
             var keyName = Name(item.Key);
             var place = $"{At(item)}, [{name}] {keyName}";
-            if (ProjectKeys.Find(name, keyName) is not { } key)
+            if (ProjectKeys.NotYet.TryGetValue($"[{name}] {keyName}", out var notYet))
+                _problems.Add(new InputProblem(place, "a key this version does not compute", $"the key removed: {notYet}"));
+            else if (ProjectKeys.Find(name, keyName) is not { } key)
                 _problems.Add(new InputProblem(place, "an unknown key", Nearest(keyName, ProjectKeys.All.Where(k => k.Table == name).Select(k => k.Name))));
             else if (Convert(key, item.Value!, place, _problems) is { } v && !table.Set(keyName, v, item.Span.Start.Line + 1))
                 _problems.Add(new InputProblem(place, "the key a second time", "each key once in a table"));

@@ -102,9 +102,10 @@ internal sealed partial class StudyLoader
 
     private PublishedTable? Sizes(string key) => TextFile("culvert", key, "sizes") is { } t ? PublishedTable.Parse(t.Name, t.Text) : null;
 
-    private void NeedCoefficient(FlowSettings? flow, bool hasCover)
+    private void NeedCoefficient(bool hasCover)
     {
-        if (flow is null || hasCover || _project["flow"].Has("runoff_coefficient") || flow.Methods.All(m => m is not RationalMethod)) return;
+        var flow = _project["flow"];
+        if (hasCover || flow.Has("runoff_coefficient") || !flow.Texts("methods").Contains("rational")) return;
         _problems.Add(new InputProblem($"{_shownName}, [flow] runoff_coefficient", "no runoff coefficient", "runoff_coefficient = 0.35 or the like, or [cover] land_cover, since methods names \"rational\""));
     }
 

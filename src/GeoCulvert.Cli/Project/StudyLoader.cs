@@ -65,7 +65,7 @@ internal sealed partial class StudyLoader
         var soilGroup = Classes("soil_group", elevation?.Elevation.Frame, plane, checkOnly);
         if (_project.Roads.Count == 0 && points is null && !_project["crossings"].Has("points"))
             _problems.Add(new InputProblem(_shownName, "neither a road nor given crossings", "a [[road]] with file = \"...\", or [crossings] points = \"...\""));
-        NeedCoefficient(flow, landCover is not null || _project["cover"].Has("land_cover"));
+        NeedCoefficient(landCover is not null || _project["cover"].Has("land_cover"));
         if (_problems.Count > 0) throw new InputException(_problems);
 
         var settings = Settings(flow!, catalogue!);

@@ -24,7 +24,9 @@ public partial class NameTests
         // Pure numbers and generic carriers whose unit stands beside them (Value with Unit, Limit with Kind).
         HashSet<string> plain = new(StringComparer.Ordinal)
         {
-            "Value", "Limit", "InSi", "SideSlope", "HeadwaterOverRise",
+            "Value", "Limit", "InSi", "SideSlope", "HeadwaterOverRise", // ratios and carriers
+            "West", "North", "East", "South", // coordinates of a frame, m by its contract
+            "K", "C", "Y", "Ks", // book symbols of the inlet-control equations, pure numbers
             "Sum", "Least", "Most", "MeanOrNull",
         };
         var offences = typeof(Finding).Assembly.GetExportedTypes()
