@@ -102,9 +102,15 @@ public static class CulvertHydraulics
         {
             double Surplus(double through) =>
                 through + RoadOvertopping.FlowM3PerS(road, HeadwaterElevationM(site, through, tailwater), tailwater) - flowM3PerS;
-            // A road below the inlet invert takes all the water before any enters the barrel.
+            // A road below the inlet invert, or drowned from below, takes all the water: none needs the barrel, and the weir alone sets the level.
             barrelFlow = Surplus(0) >= 0 ? 0 : RootFinding.Bracketed(Surplus, 0, flowM3PerS);
-            if (barrelFlow == 0) still = RootFinding.Bracketed(z => RoadOvertopping.FlowM3PerS(road, z, tailwater) - flowM3PerS, road.LowestM, Math.Max(still, road.LowestM) + 1e-9);
+            if (Math.Abs(Surplus(barrelFlow)) > 1e-9 * flowM3PerS && barrelFlow > 0) barrelFlow = SplitByLevel(site, road, flowM3PerS, tailwater);
+            if (barrelFlow < 1e-9 * flowM3PerS)
+            {
+                barrelFlow = 0;
+                still = RootFinding.Bracketed(
+                    z => RoadOvertopping.FlowM3PerS(road, z, tailwater) - flowM3PerS, road.LowestM, HeadwaterElevationM(site, flowM3PerS, tailwater));
+            }
         }
 
         var rating = Detail(site, flowM3PerS, barrelFlow, tailwater, still - site.Barrels.InletElevationM);
@@ -120,6 +126,25 @@ public static class CulvertHydraulics
         var inlet = InletControl.Headwater(b.Section, b.Inlet, flow, b.SlopeMPerM).HeadwaterM;
         var outlet = BarrelFlow.Profile(b.Section, flow, b.RoughnessN, b.EntranceLossCoefficient, b.LengthM, b.SlopeMPerM, tailwaterM - b.OutletElevationM).HeadwaterM;
         return b.InletElevationM + Math.Max(inlet, outlet);
+    }
+
+    /// <summary>
+    /// The split sought by headwater level instead of by flow: where the tailwater drowns road and barrel, a hair of head moves all the flow and the search
+    /// by flow cannot settle.
+    /// </summary>
+    private static double SplitByLevel(CulvertSite site, RoadCrest road, double flowM3PerS, double tailwater)
+    {
+        double Through(double z)
+        {
+            double Above(double q) => HeadwaterElevationM(site, q, tailwater) - z;
+            return Above(0) >= 0 ? 0 : Above(flowM3PerS) <= 0 ? flowM3PerS : RootFinding.Bracketed(Above, 0, flowM3PerS);
+        }
+
+        var level = RootFinding.Bracketed(
+            z => Through(z) + RoadOvertopping.FlowM3PerS(road, z, tailwater) - flowM3PerS,
+            Math.Max(road.LowestM, HeadwaterElevationM(site, 0, tailwater)),
+            HeadwaterElevationM(site, flowM3PerS, tailwater));
+        return Through(level);
     }
 
     private static CulvertRating Detail(CulvertSite site, double total, double barrelFlow, double tailwater, double still)
