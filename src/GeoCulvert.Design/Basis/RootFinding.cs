@@ -5,10 +5,14 @@ namespace GeoCulvert.Design.Basis;
 /// <summary>Bracketed root search, the only way the program inverts a function.</summary>
 public static class RootFinding
 {
-    /// <summary>Relative tolerance of every inverse, of the larger end of the bracket.</summary>
+    /// <summary>Tolerance of every inverse: of the root itself when the bracket is positive, else of the bracket's larger end.</summary>
     public const double RelativeTolerance = 1e-10;
 
-    /// <summary>Finds x in [low, high] with f(x) = 0 by Brent's method (Brent 1973), to 1e-10 of the bracket's larger end.</summary>
+    // The library also stops when the function value itself is below the tolerance, in whatever unit that is; a function scaled up this far
+    // never is, so that only the width of the bracket counts.
+    private const double Scale = 1e60;
+
+    /// <summary>Finds x in [low, high] with f(x) = 0 by Brent's method (Brent 1973).</summary>
     /// <param name="f">Continuous function with a change of sign on the bracket.</param>
     /// <param name="low">Lower end.</param>
     /// <param name="high">Upper end.</param>
@@ -22,8 +26,19 @@ public static class RootFinding
         if (atHigh == 0) return high;
         if (double.IsNaN(atLow) || double.IsNaN(atHigh) || Math.Sign(atLow) == Math.Sign(atHigh))
             throw new InvalidOperationException($"No change of sign on [{low:R}, {high:R}]: {atLow:R} and {atHigh:R}.");
+        // A positive bracket of many magnitudes is first halved in logarithm, so that a small root is as exact as a large one.
+        while (low > 0 && high > 4 * low)
+        {
+            var middle = Math.Sqrt(low * high);
+            var atMiddle = f(middle);
+            if (atMiddle == 0) return middle;
+            if (Math.Sign(atMiddle) == Math.Sign(atLow)) low = middle;
+            else high = middle;
+        }
+
+        var scale = Scale / Math.Max(Math.Abs(atLow), Math.Abs(atHigh));
         var accuracy = RelativeTolerance * Math.Max(Math.Abs(low), Math.Abs(high));
-        return Brent.TryFindRoot(f, low, high, accuracy, 200, out var root)
+        return Brent.TryFindRoot(x => scale * f(x), low, high, accuracy, 200, out var root)
             ? root
             : throw new InvalidOperationException($"Root search on [{low:R}, {high:R}] did not converge.");
     }
