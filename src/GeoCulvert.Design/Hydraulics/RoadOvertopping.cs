@@ -34,11 +34,13 @@ public static class RoadOvertopping
 {
     private const double UsToSi = 0.552;
     private const double DeepFromRatio = 0.15;
-    private static readonly Dictionary<(string Curve, RoadSurface Surface), (double[] X, double[] Value)> Curves = Read(
-        PublishedTable.Embedded("Hydraulics/Tables/road_overtopping.csv"));
+    private const int Strips = 4;
+    private static readonly PublishedTable Published = PublishedTable.Embedded("Hydraulics/Tables/road_overtopping.csv");
+    private static readonly string[] Surfaces = ["paved", "gravel"]; // in the order of RoadSurface
+    private static readonly Curve[] Shallow = Read("shallow"), Deep = Read("deep"), Submergence = Read("submergence");
 
     /// <summary>Source of the coefficients, with its status.</summary>
-    public static Source Source { get; } = PublishedTable.Embedded("Hydraulics/Tables/road_overtopping.csv").Rows[0].Source;
+    public static Source Source => Published.Rows[0].Source;
 
     /// <summary>Discharge coefficient Cr, US unit, for a head over the road.</summary>
     /// <param name="headM">Head HWr, m.</param>
@@ -47,13 +49,13 @@ public static class RoadOvertopping
     public static double CoefficientUs(double headM, double widthM, RoadSurface surface)
     {
         var ratio = headM / widthM;
-        var shallow = At("shallow", surface, Math.Min(headM, DeepFromRatio * widthM) / Units.Foot);
+        var shallow = Shallow[(int)surface].At(Math.Min(headM, DeepFromRatio * widthM) / Units.Foot);
         // The two published curves do not meet exactly; the larger keeps flow rising with head.
-        return ratio <= DeepFromRatio ? shallow : Math.Max(shallow, At("deep", surface, ratio));
+        return ratio <= DeepFromRatio ? shallow : Math.Max(shallow, Deep[(int)surface].At(ratio));
     }
 
     /// <summary>Submergence factor kt for the ratio of tailwater to headwater above the crest.</summary>
-    public static double SubmergenceFactor(double ratio, RoadSurface surface) => At("submergence", surface, Math.Clamp(ratio, 0, 1));
+    public static double SubmergenceFactor(double ratio, RoadSurface surface) => Submergence[(int)surface].At(Math.Clamp(ratio, 0, 1));
 
     /// <summary>Flow over the road, m3/s.</summary>
     /// <param name="crest">Road.</param>
@@ -73,7 +75,7 @@ public static class RoadOvertopping
             // The wet part of the segment in strips of even width, each at its middle level.
             var wet = z1 > headwaterM ? (headwaterM - z0) / (z1 - z0) : 1;
             var length = Math.Abs(s1 - s0) * wet;
-            var strips = z0 == z1 ? 1 : 16;
+            var strips = z0 == z1 ? 1 : Strips;
             for (var k = 0; k < strips; k++)
             {
                 var z = z0 + ((z1 - z0) * wet * (k + 0.5) / strips);
@@ -86,19 +88,24 @@ public static class RoadOvertopping
         return flow;
     }
 
-    private static double At(string curve, RoadSurface surface, double x)
+    private static Curve[] Read(string curve) =>
+    [
+        .. Surfaces.Select(surface => Published.Rows.Where(r => r.Text("curve") == curve && r.Text("surface") == surface).ToArray())
+            .Select(rows => new Curve([.. rows.Select(r => r.Number("x"))], [.. rows.Select(r => r.Number("value"))])),
+    ];
+
+    /// <summary>A curve of the chart, straight between its points and held at its ends.</summary>
+    private sealed class Curve(double[] x, double[] value)
     {
-        var (xs, values) = Curves[(curve, surface)];
-        if (x <= xs[0]) return values[0];
-        for (var i = 1; i < xs.Length; i++)
+        public double At(double at)
         {
-            if (x <= xs[i]) return values[i - 1] + ((values[i] - values[i - 1]) * (x - xs[i - 1]) / (xs[i] - xs[i - 1]));
+            if (at <= x[0]) return value[0];
+            for (var i = 1; i < x.Length; i++)
+            {
+                if (at <= x[i]) return value[i - 1] + ((value[i] - value[i - 1]) * (at - x[i - 1]) / (x[i] - x[i - 1]));
+            }
+
+            return value[^1];
         }
-
-        return values[^1];
     }
-
-    private static Dictionary<(string, RoadSurface), (double[], double[])> Read(PublishedTable table) => table.Rows
-        .GroupBy(r => (r.Text("curve"), r.Text("surface") == "paved" ? RoadSurface.Paved : RoadSurface.Gravel))
-        .ToDictionary(g => g.Key, g => (g.Select(r => r.Number("x")).ToArray(), g.Select(r => r.Number("value")).ToArray()));
 }

@@ -35,11 +35,14 @@ public sealed record SizingRequest(
 /// <param name="Barrels">The barrels.</param>
 /// <param name="Choice">Row of the catalogue.</param>
 /// <param name="Design">Rating at the design flood.</param>
-/// <param name="Check">Rating at the check flood.</param>
+/// <param name="CheckFlood">Rating at the check flood, computed when it is first asked for: most options lose before it matters.</param>
 /// <param name="Criteria">Criteria one by one.</param>
 public sealed record SizingOption(
-    CulvertBarrels Barrels, BarrelChoice Choice, CulvertRating Design, CulvertRating Check, IReadOnlyList<CriterionResult> Criteria)
+    CulvertBarrels Barrels, BarrelChoice Choice, CulvertRating Design, Lazy<CulvertRating> CheckFlood, IReadOnlyList<CriterionResult> Criteria)
 {
+    /// <summary>Rating at the check flood.</summary>
+    public CulvertRating Check => CheckFlood.Value;
+
     /// <summary>Whether every criterion is met.</summary>
     public bool MeetsAll => Criteria.All(c => c.IsMet);
 
@@ -96,11 +99,11 @@ public static class CulvertSizing
             choice.Section, count, choice.Inlet, choice.RoughnessN, choice.EntranceLossCoefficient, request.LengthM, request.InletElevationM, request.OutletElevationM);
         var site = new CulvertSite(barrels, request.Tailwater, request.Road);
         var design = CulvertHydraulics.Rate(site, request.DesignFlowM3PerS);
-        var check = CulvertHydraulics.Rate(site, request.CheckFlowM3PerS);
+        var check = new Lazy<CulvertRating>(() => CulvertHydraulics.Rate(site, request.CheckFlowM3PerS));
         return new SizingOption(barrels, choice, design, check, Judge(request, design, check));
     }
 
-    private static List<CriterionResult> Judge(SizingRequest request, CulvertRating design, CulvertRating check)
+    private static List<CriterionResult> Judge(SizingRequest request, CulvertRating design, Lazy<CulvertRating> check)
     {
         var c = request.Criteria;
         var barrels = design.Site.Barrels;
@@ -119,7 +122,7 @@ public static class CulvertSizing
             results.Add(AtLeast("cover", "", road.LowestM - (barrels.InletElevationM + barrels.Section.RiseM), c.SmallestCoverM, QuantityKind.Length, practice));
             results.Add(AtMost("flow over the road", "design", design.RoadFlowM3PerS, 0, QuantityKind.Flow, practice));
             if (c.LargestOvertoppingDepthM is { } over)
-                results.Add(AtMost("overtopping depth", "check", Math.Max(0, check.HeadwaterElevationM - road.LowestM), over, QuantityKind.Length, set));
+                results.Add(AtMost("overtopping depth", "check", Math.Max(0, check.Value.HeadwaterElevationM - road.LowestM), over, QuantityKind.Length, set));
         }
 
         return results;
