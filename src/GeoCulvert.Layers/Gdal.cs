@@ -10,22 +10,34 @@ public sealed class GdalException(string what, string gdalSays)
 /// <summary>Start-up and errors of GDAL.</summary>
 public static unsafe class Gdal
 {
-    // GDAL raises errors on its own worker threads too, so the queue is global; the last few are enough for a message.
-    private static readonly ConcurrentQueue<string> Errors = new();
+    // Errors belong to the thread that called GDAL; those of GDAL's own worker threads, which never call in here, go to a common queue.
+    private static readonly ConcurrentQueue<string> FromWorkers = new();
+    private const int Most = 8;
     private static readonly Lazy<string> Started = new(Start);
+
+    [ThreadStatic]
+    private static List<string>? _own;
 
     /// <summary>GDAL's version, "3.6.2"; loads the library.</summary>
     /// <exception cref="GdalMissingException">The library is not there.</exception>
     public static string Version => Started.Value;
 
-    internal static void Ensure() => _ = Started.Value;
+    internal static void Ensure()
+    {
+        _own ??= [];
+        _ = Started.Value;
+    }
 
-    internal static void Clear() => Errors.Clear();
+    internal static void Clear()
+    {
+        (_own ??= []).Clear();
+        FromWorkers.Clear();
+    }
 
     internal static string Says()
     {
-        var texts = Errors.ToArray().Distinct(StringComparer.Ordinal).TakeLast(3);
-        Errors.Clear();
+        var texts = (_own ?? []).Concat(FromWorkers).Distinct(StringComparer.Ordinal).TakeLast(3).ToArray();
+        Clear();
         return string.Join("; ", texts);
     }
 
@@ -52,8 +64,16 @@ public static unsafe class Gdal
     private static void OnError(int severity, int number, nint message)
     {
         if (severity < 3) return; // 1 debug, 2 warning, 3 failure, 4 fatal
-        Errors.Enqueue(Native.Text(message));
-        while (Errors.Count > 8) Errors.TryDequeue(out _);
+        var text = Native.Text(message);
+        if (_own is { } own)
+        {
+            if (own.Count >= Most) own.RemoveAt(0);
+            own.Add(text);
+            return;
+        }
+
+        FromWorkers.Enqueue(text);
+        while (FromWorkers.Count > Most) FromWorkers.TryDequeue(out _);
     }
 }
 
