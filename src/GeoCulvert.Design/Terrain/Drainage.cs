@@ -14,6 +14,13 @@ public sealed record DrainedTerrain(
 /// <summary>Codes of the terrain room.</summary>
 public static class TerrainFindings
 {
+    /// <summary>Nothing to work on.</summary>
+    public static readonly FindingCode NoData = new(
+        "terrain-without-values",
+        Severity.Error,
+        "The terrain model holds no elevation at all in the area of work.",
+        "Check its coordinate system, extent and nodata value.");
+
     /// <summary>Depressions were filled.</summary>
     public static readonly FindingCode DepressionsFilled = new(
         "depressions-filled",
@@ -42,23 +49,37 @@ public static class Drainage
     public static DrainedTerrain Solve(Grid<float> elevation, IProgress<double>? progress = null, CancellationToken cancel = default)
     {
         ArgumentNullException.ThrowIfNull(elevation);
-        var filled = DepressionFilling.Fill(elevation, cancel);
+
+        // One array of 4 bytes a cell serves in turn as labels of pits, places of flat cells and the counts.
+        var shared = new int[elevation.Cells.Length];
+        var filled = DepressionFilling.Fill(elevation, shared, cancel);
+        cancel.ThrowIfCancellationRequested();
         progress?.Report(0.5);
-        var direction = FlowDirections.Resolve(filled.Surface);
+        var direction = FlowDirections.Resolve(filled.Surface, shared);
+        cancel.ThrowIfCancellationRequested();
         progress?.Report(0.8);
-        var accumulation = FlowAccumulation.Count(direction, elevation);
+        var accumulation = FlowAccumulation.Count(direction, elevation, shared);
         progress?.Report(1);
-        var valid = elevation.Cells.LongCount(z => !float.IsNaN(z));
-        var findings = new List<Finding>();
-        if (filled.RaisedCells > 0)
+        return new DrainedTerrain(elevation, filled, direction, accumulation, Findings(elevation, filled));
+    }
+
+    private static List<Finding> Findings(Grid<float> elevation, FilledSurface filled)
+    {
+        long valid = 0;
+        foreach (var z in elevation.Cells)
         {
-            var share = (double)filled.RaisedCells / valid;
-            var kind = share > MuchFilledShare ? TerrainFindings.MuchFilled : TerrainFindings.DepressionsFilled;
-            findings.Add(kind.With(
-                $"{filled.RaisedCells * elevation.Frame.CellAreaM2 / 1e4:0.0} ha ({100 * share:0.0} % of the terrain) raised by up to {filled.DeepestM:0.00} m, {filled.VolumeM3:0} m3",
-                share, MuchFilledShare));
+            if (!float.IsNaN(z)) valid++;
         }
 
-        return new DrainedTerrain(elevation, filled, direction, accumulation, findings);
+        if (valid == 0) return [TerrainFindings.NoData.With($"none of {elevation.Frame.Columns} x {elevation.Frame.Rows} cells has a value")];
+        if (filled.RaisedCells == 0) return [];
+        var share = (double)filled.RaisedCells / valid;
+        var kind = share > MuchFilledShare ? TerrainFindings.MuchFilled : TerrainFindings.DepressionsFilled;
+        return
+        [
+            kind.With(
+                $"{filled.RaisedCells * elevation.Frame.CellAreaM2 / 1e4:0.0} ha ({100 * share:0.0} % of the terrain) raised by up to {filled.DeepestM:0.00} m, {filled.VolumeM3:0} m3",
+                share, MuchFilledShare),
+        ];
     }
 }

@@ -6,154 +6,101 @@ namespace GeoCulvert.Design.Terrain;
 /// </summary>
 public static class FlowDirections
 {
-    /// <summary>Directions of every cell; 0 for nodata and for rim cells with nothing lower.</summary>
+    /// <summary>Directions of every cell; 0 for nodata and for rim cells with nothing lower. On a surface that is not filled, pits keep 0 too.</summary>
     public static Grid<byte> Resolve(Grid<float> filled)
     {
         ArgumentNullException.ThrowIfNull(filled);
-        var frame = filled.Frame;
-        var direction = new Grid<byte>(frame);
-        var flat = SteepestDescent(filled, direction);
-        if (flat.Count > 0) DrainFlats(filled, direction, flat);
+        return Resolve(filled, new int[filled.Cells.Length]);
+    }
+
+    /// <param name="filled">A surface without depressions.</param>
+    /// <param name="scratch">A zero for every cell; zeros again afterwards. Pages of it are touched only where there are flats.</param>
+    internal static Grid<byte> Resolve(Grid<float> filled, int[] scratch)
+    {
+        var direction = new Grid<byte>(filled.Frame);
+        var flat = SteepestDescent.Compute(filled, direction.Cells);
+        foreach (ref var code in direction.Cells.AsSpan()) code &= 15;
+        if (flat.Count > 0) DrainFlats(filled, direction.Cells, [.. flat], scratch);
         return direction;
     }
 
-    private static List<int> SteepestDescent(Grid<float> filled, Grid<byte> direction)
+    /// <summary>
+    /// Barnes's mask is twice the steps to the way out, plus (farthest - steps from higher ground). "Farthest" is one number for a whole
+    /// flat and only cells of one flat are compared, so it is left out.
+    /// </summary>
+    private static void DrainFlats(Grid<float> filled, byte[] direction, int[] flat, int[] slot)
     {
-        var frame = filled.Frame;
-        int columns = frame.Columns, rows = frame.Rows;
         var z = filled.Cells;
-        var d = direction.Cells;
-        var flat = new List<int>();
-        Span<double> length = stackalloc double[9];
-        for (byte k = 1; k <= 8; k++) length[k] = D8.StepLengthM(frame, k);
-        var rowStep = D8.RowStep;
-        var columnStep = D8.ColumnStep;
-        for (var r = 0; r < rows; r++)
-        {
-            for (var c = 0; c < columns; c++)
-            {
-                var i = (r * columns) + c;
-                var level = z[i];
-                if (float.IsNaN(level)) continue;
-                double best = 0;
-                byte code = 0;
-                for (byte k = 1; k <= 8; k++)
-                {
-                    int nr = r + rowStep[k], nc = c + columnStep[k];
-                    if ((uint)nr >= (uint)rows || (uint)nc >= (uint)columns) continue;
-                    var slope = ((double)level - z[(nr * columns) + nc]) / length[k];
-                    if (slope > best)
-                    {
-                        best = slope;
-                        code = k;
-                    }
-                }
+        Span<int> step = stackalloc int[9];
+        for (var k = 1; k <= 8; k++) step[k] = (D8.RowStep[k] * filled.Frame.Columns) + D8.ColumnStep[k];
+        for (var s = 0; s < flat.Length; s++) slot[flat[s]] = s + 1;
+        var toward = new int[flat.Length + 1];
+        var away = new int[flat.Length + 1];
+        var queue = new int[flat.Length];
+        var (exits, heights) = (0, 0);
 
-                d[i] = code;
-                if (code == 0 && !EdgeCells.IsEdge(filled, r, c)) flat.Add(i);
-            }
-        }
-
-        return flat;
-    }
-
-    private static void DrainFlats(Grid<float> filled, Grid<byte> direction, List<int> flat)
-    {
-        var frame = filled.Frame;
-        int columns = frame.Columns, rows = frame.Rows;
-        var z = filled.Cells;
-        var d = direction.Cells;
-        var rowStep = D8.RowStep.ToArray();
-        var columnStep = D8.ColumnStep.ToArray();
-
-        // Only flat cells carry a number: small dictionaries of slots instead of full grids.
-        var slot = new Dictionary<int, int>(flat.Count);
-        for (var s = 0; s < flat.Count; s++) slot[flat[s]] = s;
-        var toward = new int[flat.Count];
-        var away = new int[flat.Count];
-
-        // Toward lower ground: steps from the nearest cell of the same level that already drains or is an outlet.
-        var queue = new Queue<int>();
+        // Flat cells are never on the rim, so all eight neighbours exist and hold data.
         foreach (var cell in flat)
         {
             for (var k = 1; k <= 8; k++)
             {
-                var n = cell + (rowStep[k] * columns) + columnStep[k];
-                if (z[n] == z[cell] && !slot.ContainsKey(n))
-                {
-                    toward[slot[cell]] = 1;
-                    queue.Enqueue(cell);
-                    break;
-                }
+                var n = cell + step[k];
+                if (z[n] != z[cell] || slot[n] != 0) continue;
+                toward[slot[cell]] = 1;
+                queue[exits++] = cell;
+                break;
             }
         }
 
-        Spread(toward);
-
-        // Away from higher ground: steps from the nearest cell with a higher neighbour.
+        Spread(z, slot, step, toward, queue, exits);
         foreach (var cell in flat)
         {
             for (var k = 1; k <= 8; k++)
             {
-                if (z[cell + (rowStep[k] * columns) + columnStep[k]] > z[cell])
-                {
-                    away[slot[cell]] = 1;
-                    queue.Enqueue(cell);
-                    break;
-                }
+                if (!(z[cell + step[k]] > z[cell])) continue;
+                away[slot[cell]] = 1;
+                queue[heights++] = cell;
+                break;
             }
         }
 
-        Spread(away);
-        var farthest = new Dictionary<float, int>();
+        Spread(z, slot, step, away, queue, heights);
         foreach (var cell in flat)
         {
-            var a = away[slot[cell]];
-            if (!farthest.TryGetValue(z[cell], out var f) || a > f) farthest[z[cell]] = a;
-        }
+            var own = slot[cell];
+            if (toward[own] == 0) continue;
 
-        // Barnes's mask: twice the way out, plus the nearness to higher ground.
-        long Mask(int cell)
-        {
-            var s = slot[cell];
-            return (2L * toward[s]) + (away[s] > 0 ? farthest[z[cell]] - away[s] : 0);
-        }
-
-        foreach (var cell in flat)
-        {
-            // A step along the way out lowers the mask by at least one, so a lower neighbour is always there and no circle can close.
-            var best = Mask(cell);
-            byte code = 0;
+            // The next step of a shortest way out lowers the mask by one at least: a lower neighbour is always there, and no circle closes.
+            var best = (2L * toward[own]) - away[own];
             for (byte k = 1; k <= 8; k++)
             {
-                var n = cell + (rowStep[k] * columns) + columnStep[k];
+                var n = cell + step[k];
                 if (z[n] != z[cell]) continue;
-                var mask = slot.ContainsKey(n) ? Mask(n) : -1;
-                if (mask < best)
-                {
-                    best = mask;
-                    code = k;
-                }
+                var mask = slot[n] == 0 ? long.MinValue : (2L * toward[slot[n]]) - away[slot[n]];
+                if (mask >= best) continue;
+                best = mask;
+                direction[cell] = k;
             }
-
-            d[cell] = code;
         }
 
-        void Spread(int[] steps)
+        foreach (var cell in flat) slot[cell] = 0;
+    }
+
+    /// <summary>Counts steps over cells of the same level, breadth first.</summary>
+    private static void Spread(float[] z, int[] slot, ReadOnlySpan<int> step, int[] steps, int[] queue, int count)
+    {
+        for (var head = 0; head < count; head++)
         {
-            while (queue.Count > 0)
+            var cell = queue[head];
+            var next = steps[slot[cell]] + 1;
+            for (var k = 1; k <= 8; k++)
             {
-                var cell = queue.Dequeue();
-                var next = steps[slot[cell]] + 1;
-                for (var k = 1; k <= 8; k++)
-                {
-                    var n = cell + (rowStep[k] * columns) + columnStep[k];
-                    if (z[n] == z[cell] && slot.TryGetValue(n, out var s) && steps[s] == 0)
-                    {
-                        steps[s] = next;
-                        queue.Enqueue(n);
-                    }
-                }
+                var n = cell + step[k];
+                if (z[n] != z[cell]) continue;
+                var s = slot[n];
+                if (s == 0 || steps[s] != 0) continue;
+                steps[s] = next;
+                queue[count++] = n;
             }
         }
     }

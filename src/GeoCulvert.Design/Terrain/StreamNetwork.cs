@@ -1,9 +1,9 @@
 namespace GeoCulvert.Design.Terrain;
 
-/// <summary>A stream reach: from a head or a confluence down to the next confluence or the outlet, that cell included.</summary>
+/// <summary>A stream reach: from a head or a confluence down to the next confluence or the outlet, that cell included; two cells at least.</summary>
 /// <param name="Cells">Cell indices, downstream.</param>
 /// <param name="Downstream">Index of the reach next downstream, -1 when none.</param>
-/// <param name="LowerAccumulationCells">Cells drained by the last cell before the confluence.</param>
+/// <param name="LowerAccumulationCells">Cells drained by the reach at its lower end: by its last cell before a confluence, else by its last cell.</param>
 /// <param name="Order">Strahler order (1957).</param>
 public sealed record StreamReach(int[] Cells, int Downstream, int LowerAccumulationCells, int Order);
 
@@ -11,6 +11,9 @@ public sealed record StreamReach(int[] Cells, int Downstream, int LowerAccumulat
 public static class StreamNetwork
 {
     /// <summary>Reaches in the order of their upper cell.</summary>
+    /// <param name="direction">Flow directions.</param>
+    /// <param name="accumulation">Cells drained by each cell.</param>
+    /// <param name="thresholdCells">Cells at which a stream begins; below 1 counts as 1.</param>
     public static IReadOnlyList<StreamReach> Extract(Grid<byte> direction, Grid<int> accumulation, long thresholdCells)
     {
         ArgumentNullException.ThrowIfNull(direction);
@@ -18,37 +21,36 @@ public static class StreamNetwork
         var frame = direction.Frame;
         var d = direction.Cells;
         var a = accumulation.Cells;
-        var streamInflows = new Dictionary<int, int>();
-        for (var i = 0; i < d.Length; i++)
-        {
-            if (a[i] < thresholdCells || a[i] == 0) continue;
-            streamInflows.TryAdd(i, 0);
-            if (d[i] == 0) continue;
-            var next = FlowAccumulation.Downstream(frame, i, d[i]);
-            streamInflows[next] = streamInflows.GetValueOrDefault(next) + 1;
-        }
-
-        var heads = streamInflows.Where(p => p.Value != 1).Select(p => p.Key).Order().ToArray();
+        var threshold = Math.Max(1, thresholdCells);
         var reachOf = new Dictionary<int, int>();
         var cells = new List<int[]>();
-        foreach (var head in heads)
+        var path = new List<int>();
+        for (var head = 0; head < a.Length; head++)
         {
-            var path = new List<int> { head };
+            if (a[head] < threshold || d[head] == 0 || StreamInflows(direction, a, threshold, head) == 1) continue;
+            path.Clear();
+            path.Add(head);
             var cell = head;
-            while (d[cell] != 0)
+            do
             {
                 cell = FlowAccumulation.Downstream(frame, cell, d[cell]);
                 path.Add(cell);
-                if (streamInflows[cell] != 1) break;
             }
-
+            while (d[cell] != 0 && StreamInflows(direction, a, threshold, cell) == 1);
             reachOf[head] = cells.Count;
             cells.Add([.. path]);
         }
 
-        var downstream = cells.Select(p => p.Length > 1 && reachOf.TryGetValue(p[^1], out var r) ? r : -1).ToArray();
-        var order = new int[cells.Count];
-        var best = new (int Order, int Times)[cells.Count];
+        int[] downstream = [.. cells.Select(p => reachOf.GetValueOrDefault(p[^1], -1))];
+        var order = StrahlerOrders(downstream);
+        return [.. cells.Select((p, k) => new StreamReach(
+            p, downstream[k], a[StreamInflows(direction, a, threshold, p[^1]) == 1 ? p[^1] : p[^2]], order[k]))];
+    }
+
+    private static int[] StrahlerOrders(int[] downstream)
+    {
+        var order = new int[downstream.Length];
+        var best = new (int Order, int Times)[downstream.Length];
         foreach (var k in WatershedLabels.UpstreamFirst(downstream))
         {
             order[k] = best[k].Order == 0 ? 1 : best[k].Times > 1 ? best[k].Order + 1 : best[k].Order;
@@ -57,6 +59,21 @@ public static class StreamNetwork
             b = order[k] > b.Order ? (order[k], 1) : order[k] == b.Order ? (b.Order, b.Times + 1) : b;
         }
 
-        return [.. cells.Select((p, k) => new StreamReach(p, downstream[k], a[p.Length > 1 && downstream[k] >= 0 ? p[^2] : p[^1]], order[k]))];
+        return order;
+    }
+
+    private static int StreamInflows(Grid<byte> direction, int[] accumulation, long threshold, int cell)
+    {
+        var frame = direction.Frame;
+        int row = cell / frame.Columns, column = cell % frame.Columns, inflows = 0;
+        for (byte k = 1; k <= 8; k++)
+        {
+            int r = row + D8.RowStep[k], c = column + D8.ColumnStep[k];
+            if (!frame.Contains(r, c)) continue;
+            var n = (r * frame.Columns) + c;
+            if (direction.Cells[n] == D8.Opposite(k) && accumulation[n] >= threshold) inflows++;
+        }
+
+        return inflows;
     }
 }

@@ -7,7 +7,10 @@ namespace GeoCulvert.Design.Terrain;
 /// <param name="TotalCells">All cells that reach each outlet.</param>
 public sealed record WatershedLabelling(Grid<int> Labels, int[] Parent, long[] LocalCells, long[] TotalCells);
 
-/// <summary>Labels all watersheds of a run in one backward sweep: each cell once, nested ones included.</summary>
+/// <summary>
+/// Labels all watersheds of a run in one pass, nested ones included: each cell takes the label of the next labelled cell downstream; totals are
+/// sums of local watersheds along the tree of outlets. The time does not depend on the number of outlets.
+/// </summary>
 public static class WatershedLabels
 {
     /// <summary>Labels every cell with its nearest outlet downstream.</summary>
@@ -23,14 +26,9 @@ public static class WatershedLabels
         for (var k = 0; k < outletCells.Count; k++) outletAt.TryAdd(outletCells[k], k);
         foreach (var (cell, k) in outletAt) label[cell] = k + 1;
         var d = direction.Cells;
-        var order = FlowAccumulation.DownstreamOrder(direction);
         var local = new long[outletCells.Count];
-        for (var i = order.Length - 1; i >= 0; i--)
-        {
-            var cell = order[i];
-            if (label[cell] == 0 && d[cell] != 0) label[cell] = label[FlowAccumulation.Downstream(direction.Frame, cell, d[cell])];
-            if (label[cell] != 0) local[label[cell] - 1]++;
-        }
+        foreach (var k in outletAt.Values) local[k] = 1;
+        RunDown(direction, label, local);
 
         var parent = new int[outletCells.Count];
         for (var k = 0; k < parent.Length; k++)
@@ -48,6 +46,39 @@ public static class WatershedLabels
         }
 
         return new WatershedLabelling(labels, parent, local, total);
+    }
+
+    /// <summary>Walks down from every cell to the first with a label, then again to write it: each cell is passed twice at most.</summary>
+    private static void RunDown(Grid<byte> direction, int[] label, long[] local)
+    {
+        const int NoOutlet = -1;
+        Span<int> step = stackalloc int[16];
+        FlowAccumulation.Steps(direction.Frame, step);
+        var d = direction.Cells;
+        for (var i = 0; i < label.Length; i++)
+        {
+            if (label[i] != 0) continue;
+            var cell = i;
+            var passed = 0;
+            while (label[cell] == 0 && d[cell] != 0)
+            {
+                cell += step[d[cell] & 15];
+                if (++passed > label.Length) throw new InvalidOperationException("The flow directions hold a circle.");
+            }
+
+            var found = label[cell] == 0 ? NoOutlet : label[cell];
+            cell = i;
+            for (var k = 0; k < passed; k++)
+            {
+                label[cell] = found;
+                cell += step[d[cell] & 15];
+            }
+
+            if (label[cell] == 0) label[cell] = found;
+            if (found > 0) local[found - 1] += passed;
+        }
+
+        for (var i = 0; i < label.Length; i++) label[i] = Math.Max(0, label[i]);
     }
 
     /// <summary>Outlets in an order in which each comes after all that drain to it.</summary>

@@ -65,12 +65,12 @@ internal static class NaiveTerrain
         var d = new byte[z.Length];
         for (var i = 0; i < z.Length; i++)
         {
-            double best = 0;
-            foreach (var (code, n) in Neighbours(frame, i))
-            {
-                var slope = ((double)z[i] - z[n]) / D8.StepLengthM(frame, code);
-                if (slope > best) (best, d[i]) = (slope, code);
-            }
+            // Of the neighbours along one kind of step the lowest; of these the steepest; of equals the first clockwise.
+            d[i] = Neighbours(frame, i).Where(n => z[n.Cell] < z[i])
+                .GroupBy(n => n.Code % 4 == 1 ? "north-south" : n.Code % 4 == 3 ? "east-west" : "diagonal")
+                .Select(g => g.MinBy(n => z[n.Cell]))
+                .OrderByDescending(n => ((double)z[i] - z[n.Cell]) / D8.StepLengthM(frame, n.Code)).ThenBy(n => n.Code)
+                .FirstOrDefault().Code;
         }
 
         bool Flat(int i) => d[i] == 0 && !float.IsNaN(z[i]) && !IsRim(filled, i);

@@ -1,0 +1,134 @@
+namespace GeoCulvert.Design.Terrain;
+
+/// <summary>
+/// Steepest descent by true distance on any surface. Rule, so that every implementation agrees to the bit: among the two or four
+/// neighbours of the same kind of step (north-south, east-west, diagonal) the lowest counts, first clockwise; among these the one
+/// with the largest fall / length in double precision; among equals the first code clockwise from north.
+/// </summary>
+internal static class SteepestDescent
+{
+    /// <summary>Set beside the code of cells that touch the edge of the grid or nodata.</summary>
+    public const byte Rim = 16;
+
+    /// <summary>Code of every cell, with <see cref="Rim"/> where it touches an edge; 0 for nodata. Returns the inner cells with nothing lower.</summary>
+    public static List<int> Compute(Grid<float> surface, byte[] code)
+    {
+        var frame = surface.Frame;
+        int columns = frame.Columns, rows = frame.Rows;
+        ReadOnlySpan<float> z = surface.Cells;
+        var flat = new List<int>();
+        double height = frame.CellHeightM, width = frame.CellWidthM, diagonal = D8.StepLengthM(frame, 2);
+        bool gapAbove = false, gapHere = HasGap(z[..Math.Min(columns, z.Length)]);
+        for (var r = 0; r < rows; r++)
+        {
+            var here = z.Slice(r * columns, columns);
+            var codes = code.AsSpan(r * columns, columns);
+            var gapBelow = r + 1 < rows && HasGap(z.Slice((r + 1) * columns, columns));
+            if (r == 0 || r == rows - 1 || columns < 3)
+            {
+                for (var c = 0; c < columns; c++) codes[c] = AtRim(surface, r, c);
+            }
+            else
+            {
+                codes[0] = AtRim(surface, r, 0);
+                codes[^1] = AtRim(surface, r, columns - 1);
+                Row(z.Slice((r - 1) * columns, columns), here, z.Slice((r + 1) * columns, columns), codes, height, width, diagonal);
+                if (gapAbove || gapHere || gapBelow) MarkRims(surface, r, codes);
+                for (var c = 1; c < codes.Length - 1; c++)
+                {
+                    if (codes[c] == 0 && !float.IsNaN(here[c])) flat.Add((r * columns) + c);
+                }
+            }
+
+            (gapAbove, gapHere) = (gapHere, gapBelow);
+        }
+
+        return flat;
+    }
+
+    /// <summary>Code of one cell anywhere in the grid, without the rim mark.</summary>
+    public static byte At(Grid<float> surface, int row, int column)
+    {
+        var frame = surface.Frame;
+        var z = surface[row, column];
+        Span<float> near = stackalloc float[9];
+        for (var k = 1; k <= 8; k++)
+        {
+            int r = row + D8.RowStep[k], c = column + D8.ColumnStep[k];
+            near[k] = frame.Contains(r, c) ? surface[r, c] : float.NaN;
+        }
+
+        return Choose(
+            z, near[1], near[2], near[3], near[4], near[5], near[6], near[7], near[8],
+            frame.CellHeightM, frame.CellWidthM, D8.StepLengthM(frame, 2));
+    }
+
+    private static byte AtRim(Grid<float> surface, int row, int column) =>
+        float.IsNaN(surface[row, column]) ? (byte)0 : (byte)(At(surface, row, column) | Rim);
+
+    private static void MarkRims(Grid<float> surface, int row, Span<byte> codes)
+    {
+        for (var c = 1; c < codes.Length - 1; c++)
+        {
+            if (!float.IsNaN(surface[row, c]) && EdgeCells.IsEdge(surface, row, c)) codes[c] |= Rim;
+        }
+    }
+
+    private static bool HasGap(ReadOnlySpan<float> row)
+    {
+        foreach (var z in row)
+        {
+            if (float.IsNaN(z)) return true;
+        }
+
+        return false;
+    }
+
+    private static void Row(
+        ReadOnlySpan<float> above, ReadOnlySpan<float> here, ReadOnlySpan<float> below, Span<byte> codes, double height, double width, double diagonal)
+    {
+        above = above[..here.Length];
+        below = below[..here.Length];
+        codes = codes[..here.Length];
+        for (var c = 1; c < here.Length - 1; c++)
+        {
+            codes[c] = Choose(
+                here[c], above[c], above[c + 1], here[c + 1], below[c + 1], below[c], below[c - 1], here[c - 1], above[c - 1], height, width, diagonal);
+        }
+    }
+
+    // Comparisons with NaN are false, so nodata is never chosen and a nodata cell chooses nothing.
+    private static byte Choose(
+        float z, float n, float ne, float e, float se, float s, float sw, float w, float nw, double height, double width, double diagonal)
+    {
+        var best = 0.0;
+        byte code = 0;
+        float low = z;
+        byte at = 0;
+        if (ne < low) (low, at) = (ne, 2);
+        if (se < low) (low, at) = (se, 4);
+        if (sw < low) (low, at) = (sw, 6);
+        if (nw < low) (low, at) = (nw, 8);
+        if (at != 0) (best, code) = (((double)z - low) / diagonal, at);
+
+        (low, at) = (z, 0);
+        if (n < low) (low, at) = (n, 1);
+        if (s < low) (low, at) = (s, 5);
+        if (at != 0)
+        {
+            var slope = ((double)z - low) / height;
+            if (slope > best || (slope == best && at < code)) (best, code) = (slope, at);
+        }
+
+        (low, at) = (z, 0);
+        if (e < low) (low, at) = (e, 3);
+        if (w < low) (low, at) = (w, 7);
+        if (at != 0)
+        {
+            var slope = ((double)z - low) / width;
+            if (slope > best || (slope == best && at < code)) code = at;
+        }
+
+        return code;
+    }
+}
