@@ -1,3 +1,7 @@
+using System.Runtime.CompilerServices;
+using System.Runtime.InteropServices;
+using System.Runtime.Intrinsics;
+
 namespace GeoCulvert.Design.Terrain;
 
 /// <summary>
@@ -34,9 +38,12 @@ internal static class SteepestDescent
                 codes[^1] = AtRim(surface, r, columns - 1);
                 Row(z.Slice((r - 1) * columns, columns), here, z.Slice((r + 1) * columns, columns), codes, height, width, diagonal);
                 if (gapAbove || gapHere || gapBelow) MarkRims(surface, r, codes);
-                for (var c = 1; c < codes.Length - 1; c++)
+                for (var c = 1; c < columns - 1; c++)
                 {
-                    if (codes[c] == 0 && !float.IsNaN(here[c])) flat.Add((r * columns) + c);
+                    var ahead = codes[c..^1].IndexOf((byte)0);
+                    if (ahead < 0) break;
+                    c += ahead;
+                    if (!float.IsNaN(here[c])) flat.Add((r * columns) + c);
                 }
             }
 
@@ -90,14 +97,87 @@ internal static class SteepestDescent
         above = above[..here.Length];
         below = below[..here.Length];
         codes = codes[..here.Length];
-        for (var c = 1; c < here.Length - 1; c++)
+        var c = 1;
+        if (Vector256.IsHardwareAccelerated)
+        {
+            for (; c + Vector256<float>.Count < here.Length; c += Vector256<float>.Count)
+            {
+                var chosen = Choose(
+                    At(here, c), At(above, c), At(above, c + 1), At(here, c + 1), At(below, c + 1), At(below, c), At(below, c - 1), At(here, c - 1), At(above, c - 1),
+                    Vector256.Create(height), Vector256.Create(width), Vector256.Create(diagonal));
+                var narrow = Vector128.Narrow(chosen.GetLower(), chosen.GetUpper());
+                MemoryMarshal.Write(codes[c..], Vector128.Narrow(narrow, narrow).AsUInt64().ToScalar());
+            }
+        }
+
+        for (; c < here.Length - 1; c++)
         {
             codes[c] = Choose(
                 here[c], above[c], above[c + 1], here[c + 1], below[c + 1], below[c], below[c - 1], here[c - 1], above[c - 1], height, width, diagonal);
         }
     }
 
-    // Comparisons with NaN are false, so nodata is never chosen and a nodata cell chooses nothing.
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private static Vector256<float> At(ReadOnlySpan<float> row, int column) => Vector256.Create(row.Slice(column, Vector256<float>.Count));
+
+    /// <summary>The rule for eight cells at once; the plain form below is its twin.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private static Vector256<int> Choose(
+        Vector256<float> z, Vector256<float> n, Vector256<float> ne, Vector256<float> e, Vector256<float> se, Vector256<float> s, Vector256<float> sw,
+        Vector256<float> w, Vector256<float> nw, Vector256<double> height, Vector256<double> width, Vector256<double> diagonal)
+    {
+        var low = z;
+        var code = Vector256<int>.Zero;
+        Lower(ne, 2, ref low, ref code);
+        Lower(se, 4, ref low, ref code);
+        Lower(sw, 6, ref low, ref code);
+        Lower(nw, 8, ref low, ref code);
+        var (zLeft, zRight) = Vector256.Widen(z);
+        var (left, right) = Vector256.Widen(low);
+        var bestLeft = (zLeft - left) / diagonal;
+        var bestRight = (zRight - right) / diagonal;
+
+        low = z;
+        var at = Vector256<int>.Zero;
+        Lower(n, 1, ref low, ref at);
+        Lower(s, 5, ref low, ref at);
+        (left, right) = Vector256.Widen(low);
+        var (slopeLeft, slopeRight) = ((zLeft - left) / height, (zRight - right) / height);
+        code = Vector256.ConditionalSelect(Steeper(slopeLeft, slopeRight, bestLeft, bestRight, at, code), at, code);
+        (bestLeft, bestRight) = (Larger(slopeLeft, bestLeft), Larger(slopeRight, bestRight));
+
+        low = z;
+        at = Vector256<int>.Zero;
+        Lower(e, 3, ref low, ref at);
+        Lower(w, 7, ref low, ref at);
+        (left, right) = Vector256.Widen(low);
+        (slopeLeft, slopeRight) = ((zLeft - left) / width, (zRight - right) / width);
+        return Vector256.ConditionalSelect(Steeper(slopeLeft, slopeRight, bestLeft, bestRight, at, code), at, code);
+    }
+
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private static void Lower(Vector256<float> neighbour, int its, ref Vector256<float> low, ref Vector256<int> code)
+    {
+        var lower = Vector256.LessThan(neighbour, low);
+        low = Vector256.ConditionalSelect(lower, neighbour, low);
+        code = Vector256.ConditionalSelect(lower.AsInt32(), Vector256.Create(its), code);
+    }
+
+    // A nodata cell has NaN slopes: never larger, never equal.
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private static Vector256<double> Larger(Vector256<double> slope, Vector256<double> best) =>
+        Vector256.ConditionalSelect(Vector256.GreaterThan(slope, best), slope, best);
+
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private static Vector256<int> Steeper(
+        Vector256<double> left, Vector256<double> right, Vector256<double> bestLeft, Vector256<double> bestRight, Vector256<int> at, Vector256<int> code)
+    {
+        var steeper = Vector256.Narrow(Vector256.GreaterThan(left, bestLeft).AsInt64(), Vector256.GreaterThan(right, bestRight).AsInt64());
+        var even = Vector256.Narrow(Vector256.Equals(left, bestLeft).AsInt64(), Vector256.Equals(right, bestRight).AsInt64());
+        return steeper | (even & Vector256.LessThan(at, code));
+    }
+
+    // The plain form. Comparisons with NaN are false, so nodata is never chosen and a nodata cell chooses nothing.
     private static byte Choose(
         float z, float n, float ne, float e, float se, float s, float sw, float w, float nw, double height, double width, double diagonal)
     {

@@ -11,7 +11,7 @@ internal static class RandomTerrain
     private static readonly Gen<float> Steps = Gen.Int[-1, 12].Select(i => i / 4f);
 
     public static readonly Gen<Grid<float>> Any =
-        from columns in Gen.Int[1, 14]
+        from columns in Gen.Int[1, 22] // wide enough for rows of vectors
         from rows in Gen.Int[1, 14]
         from width in Gen.OneOf(Gen.Const(1.0), Gen.Const(3.0), Gen.Const(26.5))
         from height in Gen.OneOf(Gen.Const(1.0), Gen.Const(2.0), Gen.Const(26.5))

@@ -1,0 +1,57 @@
+using System.Diagnostics;
+using GeoCulvert.Benchmarks;
+using GeoCulvert.Design.Terrain;
+
+// Usage: GeoCulvert.Benchmarks [SIDE [TURNS]]   prints nanoseconds a cell (best of the turns) for terrain of SIDE x SIDE cells.
+var side = args.Length > 0 ? int.Parse(args[0]) : 2000;
+var turns = args.Length > 1 ? int.Parse(args[1]) : 3;
+Console.WriteLine($"{side} x {side} cells, one thread, best of {turns}; ns a cell");
+Console.WriteLine("| terrain | raised % | fill | directions | accumulation | whole stage | labels 1000 | paths 1000 | streams | allocated B a cell |");
+Console.WriteLine("|---|---|---|---|---|---|---|---|---|---|");
+foreach (var (name, make) in Shapes.All)
+{
+    var z = make(side);
+    var best = new double[7];
+    Array.Fill(best, double.PositiveInfinity);
+    FilledSurface? filled = null;
+    long bytes = 0;
+    for (var turn = 0; turn < turns; turn++)
+    {
+        filled = Time(0, () => DepressionFilling.Fill(z));
+        var direction = Time(1, () => FlowDirections.Resolve(filled.Surface));
+        var accumulation = Time(2, () => FlowAccumulation.Count(direction, z));
+        var before = GC.GetAllocatedBytesForCurrentThread();
+        Time(3, () => Drainage.Solve(z));
+        bytes = GC.GetAllocatedBytesForCurrentThread() - before;
+        var outlets = Outlets(accumulation);
+        Time(4, () => WatershedLabels.Label(direction, outlets));
+        Time(5, () => LongestFlowPath.Trace(direction, outlets));
+        Time(6, () => StreamNetwork.Extract(direction, accumulation, 80_000));
+    }
+
+    Console.WriteLine(
+        $"| {name} | {100.0 * filled!.RaisedCells / z.Cells.Length:0.0} | {string.Join(" | ", best.Select(b => $"{b:0}"))} | {bytes / (double)z.Cells.Length:0.0} |");
+
+    T Time<T>(int column, Func<T> work)
+    {
+        GC.Collect();
+        var clock = Stopwatch.StartNew();
+        var result = work();
+        best[column] = Math.Min(best[column], clock.Elapsed.TotalNanoseconds / z.Cells.Length);
+        return result;
+    }
+}
+
+static int[] Outlets(Grid<int> accumulation)
+{
+    // Cells of some size, spread over the grid: they nest.
+    var chance = new Random(1);
+    var outlets = new HashSet<int>();
+    for (var draw = 0; outlets.Count < 1000 && draw < 100_000_000; draw++)
+    {
+        var cell = chance.Next(accumulation.Cells.Length);
+        if (accumulation.Cells[cell] > 100) outlets.Add(cell);
+    }
+
+    return [.. outlets];
+}
