@@ -33,9 +33,10 @@ public static class DepressionFilling
     /// <param name="cancel">Stops the work.</param>
     internal static FilledSurface Fill(Grid<float> elevation, int[] scratch, CancellationToken cancel)
     {
-        var basins = PitBasins.Label(elevation, scratch, cancel);
+        var most = Math.Max(1000, elevation.Cells.LongLength * MostBasinsPct / 100);
+        var basins = PitBasins.Label(elevation, scratch, most, cancel);
         Grid<float> surface;
-        if (basins > (long)elevation.Cells.Length * MostBasinsPct / 100 && basins > 1000)
+        if (basins > most)
         {
             surface = PriorityFlood.Fill(elevation, cancel);
         }

@@ -31,8 +31,8 @@ public static class FlowDirections
     private static void DrainFlats(Grid<float> filled, byte[] direction, int[] flat, int[] slot)
     {
         var z = filled.Cells;
-        Span<int> step = stackalloc int[9];
-        for (var k = 1; k <= 8; k++) step[k] = (D8.RowStep[k] * filled.Frame.Columns) + D8.ColumnStep[k];
+        Span<int> step = stackalloc int[16];
+        FlowAccumulation.Steps(filled.Frame, step);
         for (var s = 0; s < flat.Length; s++) slot[flat[s]] = s + 1;
         var toward = new int[flat.Length + 1];
         var away = new int[flat.Length + 1];

@@ -3,22 +3,26 @@ namespace GeoCulvert.Design.Terrain;
 /// <summary>Which pit every cell runs down to. Level ground counts as one pit unless it has a way down.</summary>
 internal static class PitBasins
 {
-    /// <summary>Labels every cell: 0 = runs down to the rim (or is nodata), 1 and up = pit. Returns the number of pits.</summary>
+    /// <summary>
+    /// Labels every cell: 0 = runs down to the rim (or is nodata), 1 and up = pit. Returns the number of pits; with more than
+    /// <paramref name="most"/> only the pits themselves are labelled.
+    /// </summary>
     /// <param name="elevation">Elevations, m; NaN is nodata.</param>
     /// <param name="label">Zeros; receives the labels.</param>
+    /// <param name="most">Pits up to which the labels are wanted.</param>
     /// <param name="cancel">Stops the work.</param>
-    public static int Label(Grid<float> elevation, int[] label, CancellationToken cancel)
+    public static int Label(Grid<float> elevation, int[] label, long most, CancellationToken cancel)
     {
         var code = new byte[elevation.Cells.Length];
         var flat = SteepestDescent.Compute(elevation, code);
         if (flat.Count == 0) return 0;
         cancel.ThrowIfCancellationRequested();
         Span<int> step = stackalloc int[16];
-        for (var k = 1; k <= 8; k++) step[k] = (D8.RowStep[k] * elevation.Frame.Columns) + D8.ColumnStep[k];
+        FlowAccumulation.Steps(elevation.Frame, step);
         LeadFlatsOut(elevation.Cells, code, flat, step);
         var pits = NumberPits(elevation.Cells, code, flat, step, label);
         cancel.ThrowIfCancellationRequested();
-        if (pits > 0) RunDown(elevation.Cells, code, step, label);
+        if (pits > 0 && pits <= most) RunDown(elevation.Cells, code, step, label);
         return pits;
     }
 

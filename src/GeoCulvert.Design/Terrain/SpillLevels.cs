@@ -44,8 +44,8 @@ internal static class SpillLevels
             if ((r & 255) == 0) cancel.ThrowIfCancellationRequested();
             ReadOnlySpan<int> a = label.AsSpan(r * columns, columns), b = label.AsSpan((r + 1) * columns, columns)[..a.Length];
             ReadOnlySpan<float> za = z.Slice(r * columns, columns)[..a.Length], zb = z.Slice((r + 1) * columns, columns)[..a.Length];
-            // Every pair of neighbours lies in two rows that touch: down, along the upper row, and both diagonals. The last row is
-            // rim, all label 0.
+            // Every pair of neighbours lies in two rows that touch: down, along the upper row, and both diagonals. The last row is rim,
+            // all label 0.
             for (var c = 0; c < a.Length; c++)
             {
                 if (a[c] != b[c]) passes.Add(a[c], b[c], Math.Max(za[c], zb[c]));
