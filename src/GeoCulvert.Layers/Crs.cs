@@ -7,6 +7,9 @@ namespace GeoCulvert.Layers;
 /// <summary>A coordinate reference system. Axis order is always x (east, longitude) then y (north, latitude).</summary>
 public sealed unsafe class Crs : SafeHandle
 {
+    private static readonly string[] OpenGisNames =
+        ["http://opengis.net/def/crs", "https://opengis.net/def/crs", "http://www.opengis.net/def/crs", "https://www.opengis.net/def/crs"];
+
     private Crs(nint handle)
         : base(0, ownsHandle: true)
     {
@@ -70,7 +73,17 @@ public sealed unsafe class Crs : SafeHandle
 
     internal nint Pointer => IsClosed ? throw new ObjectDisposedException(nameof(Crs)) : handle;
 
-    internal Crs Clone() => new(Native.OSRClone(Pointer));
+    /// <summary>
+    /// A copy without the vertical part. Maps are moved with this one: between systems with a vertical part GDAL's warp would change the
+    /// values of the cells too, elevations a second time and even classes.
+    /// </summary>
+    public Crs Horizontal()
+    {
+        var copy = Native.OSRClone(Pointer);
+        if (Native.OSRIsCompound(copy) != 0) _ = Native.OSRStripVertical(copy);
+        if (Native.OSRGetAxesCount(copy) > 2) _ = Native.OSRDemoteTo2D(copy, 0);
+        return new Crs(copy);
+    }
 
     /// <summary>Reads a coordinate system from "EPSG:26912", well-known text or a PROJ string.</summary>
     /// <exception cref="GdalException">The text is not a coordinate system.</exception>
@@ -79,6 +92,10 @@ public sealed unsafe class Crs : SafeHandle
         ArgumentException.ThrowIfNullOrWhiteSpace(text);
         Gdal.Ensure();
         Gdal.Clear();
+        // GDAL would fetch an address. The names of systems on opengis.net look like addresses but are looked up on this machine.
+        var name = text.TrimStart();
+        if (name.Contains("://", StringComparison.Ordinal) && !OpenGisNames.Any(n => name.StartsWith(n, StringComparison.OrdinalIgnoreCase)))
+            throw new GdalException($"'{text}' is not a coordinate system", "an address is not fetched; give a code such as EPSG:26912, well-known text or a PROJ string");
         var srs = Native.OSRNewSpatialReference(0);
         if (Native.OSRSetFromUserInput(srs, text) == 0) return new Crs(srs);
         Native.OSRRelease(srs);

@@ -47,6 +47,12 @@ public sealed record ElevationModel(Grid<float> Elevation, WorkingPlane Plane, I
 /// <summary>Reads terrain models and class rasters onto one grid.</summary>
 public static class ElevationReader
 {
+    // No land lies lower than the shore of the Dead Sea (about -430 m) or higher than Mount Everest (8849 m): common knowledge, with a margin for mines.
+    private const float LowestLandM = -600, HighestLandM = 9000;
+
+    // Values like -3.4e38 stand for nodata whose tag was rounded or lost.
+    private const float BeyondAnyNumberOfMetres = 1e9f;
+
     private static readonly (string Word, double InM)[] UnitWords =
     [
         ("m", 1), ("metre", 1), ("metres", 1), ("meter", 1), ("meters", 1),
@@ -65,17 +71,13 @@ public static class ElevationReader
         ArgumentNullException.ThrowIfNull(options);
         var findings = new List<Finding>();
         var (crs, verticalM) = Check(source, options, findings);
-        var working = options.WorkingCrs ?? (crs.IsProjected ? crs : Utm(source, crs));
-        var grid = crs.IsProjected && crs.IsSameAs(working) && source.GeoTransform is [_, > 0, 0, _, 0, not 0] && options.CellSizeM is null
+        using var from = crs.Horizontal();
+        var working = (options.WorkingCrs ?? (crs.IsProjected ? crs : Utm(source, from))).Horizontal(); // a copy: the source closes its own
+        var grid = from.IsProjected && from.IsSameAs(working) && source.GeoTransform is [_, > 0, 0, _, 0, not 0] && options.CellSizeM is null
             ? ReadAsItLies(source, options, working)
-            : ReadWarped(source, options, crs, working, findings);
-        if (verticalM != 1)
-        {
-            var factor = (float)verticalM;
-            foreach (ref var z in grid.Cells.AsSpan()) z *= factor;
-        }
-
-        return new ElevationModel(grid, new WorkingPlane(working.Clone()), findings); // the source closes its own
+            : ReadWarped(source, options, from, working, findings);
+        InMetres(grid, (float)verticalM, source.Path, findings);
+        return new ElevationModel(grid, new WorkingPlane(working), findings);
     }
 
     /// <summary>Checks what the file and the project say, without reading a cell.</summary>
@@ -99,6 +101,8 @@ public static class ElevationReader
             problems.Add(new InputProblem("[terrain] working_crs", options.WorkingCrs.Label, "a projected coordinate system"));
 
         var (unit, unknownWord) = FileUnit(source);
+        if (options.VerticalUnitM is null && source.Crs?.VerticalUnitM is { } ofCrs && UnitOf(source.UnitName) is { } ofBand && Math.Abs(ofBand - ofCrs) > 0.001)
+            problems.Add(new InputProblem(source.Path, $"elevations in '{source.UnitName}' under a coordinate system whose heights have a unit of {ofCrs:0.####} m", "[terrain] vertical_unit in the project file, to say which is right: \"m\", \"ft\" or \"us-ft\""));
         if (unknownWord is not null && options.VerticalUnitM is null)
             problems.Add(new InputProblem(source.Path, $"elevations in '{unknownWord}'", "[terrain] vertical_unit in the project file: \"m\", \"ft\" or \"us-ft\""));
         else if (unit is null && options.VerticalUnitM is null)
@@ -116,11 +120,12 @@ public static class ElevationReader
         ArgumentNullException.ThrowIfNull(plane);
         if (source.Crs is null) throw new InputException(source.Path, "no coordinate system", "a raster that says its own");
         var unit = plane.Crs.LinearUnitM;
+        using Crs from = source.Crs.Horizontal(), to = plane.Crs.Horizontal();
         using var warped = source.Warped(
-            "-t_srs", plane.Crs.Wkt, "-r", "near", "-ot", "Int32", "-dstnodata", "-2147483648",
+            "-s_srs", from.Wkt, "-t_srs", to.Wkt, "-r", "near", "-ot", "Int32", "-dstnodata", "-2147483648",
             "-te", Say(frame.West / unit), Say(frame.South / unit), Say(frame.East / unit), Say(frame.North / unit),
             "-ts", Say(frame.Columns), Say(frame.Rows));
-        var grid = new Grid<int>(frame);
+        var grid = NewGrid<int>(frame, source.Path);
         warped.ReadWindow(0, 0, frame.Columns, frame.Rows, grid.Cells);
         return grid;
     }
@@ -128,10 +133,37 @@ public static class ElevationReader
     private static (double? InM, string? UnknownWord) FileUnit(RasterSource source)
     {
         if (source.Crs?.VerticalUnitM is { } compound) return (compound, null);
-        var word = source.UnitName.Trim().ToLowerInvariant();
-        if (word.Length == 0) return (null, null);
-        var known = UnitWords.Where(u => u.Word == word).Select(u => (double?)u.InM).FirstOrDefault();
-        return (known, known is null ? source.UnitName : null);
+        var known = UnitOf(source.UnitName);
+        return (known, known is null && source.UnitName.Trim().Length > 0 ? source.UnitName : null);
+    }
+
+    private static double? UnitOf(string name)
+    {
+        var word = name.Trim().ToLowerInvariant();
+        return UnitWords.Where(u => u.Word == word).Select(u => (double?)u.InM).FirstOrDefault();
+    }
+
+    /// <summary>Brings elevations to metres; what is no number or beyond any number of metres becomes nodata, what is beyond the Earth is said.</summary>
+    private static void InMetres(Grid<float> grid, float verticalM, string path, List<Finding> findings)
+    {
+        long doubtful = 0;
+        float first = 0;
+        foreach (ref var z in grid.Cells.AsSpan())
+        {
+            if (!(MathF.Abs(z) < BeyondAnyNumberOfMetres))
+            {
+                z = float.NaN;
+                continue;
+            }
+
+            var stored = z;
+            z *= verticalM;
+            if (z is >= LowestLandM and <= HighestLandM) continue;
+            if (doubtful++ == 0) first = stored;
+        }
+
+        if (doubtful > 0)
+            findings.Add(LayerFindings.ElevationsDoubtful.With(string.Create(CultureInfo.InvariantCulture, $"{path}: {doubtful} of {grid.Frame.Count} cells, for example {first:0.###}")));
     }
 
     private static Crs Utm(RasterSource source, Crs crs)
@@ -157,6 +189,13 @@ public static class ElevationReader
 
     private static Grid<float> ReadWarped(RasterSource source, ElevationOptions options, Crs crs, Crs working, List<Finding> findings)
     {
+        if (options.NoData is { } stated && source.NoData is { } tagged && !stated.Equals(tagged))
+        {
+            // The warp knows one nodata value; with two the cells are cleaned first, so that neither bleeds into its neighbours.
+            using var cleaned = source.Cleaned(stated);
+            return ReadWarped(cleaned, options with { NoData = null }, crs, working, findings);
+        }
+
         var arguments = new List<string> { "-s_srs", crs.Wkt, "-t_srs", working.Wkt, "-r", "bilinear", "-ot", "Float32", "-dstnodata", "nan" };
         if (options.NoData is { } n) arguments.AddRange(["-srcnodata", Say(n)]);
         if (options.CellSizeM is { } cell) arguments.AddRange(["-tr", Say(cell / working.LinearUnitM), Say(cell / working.LinearUnitM)]);
@@ -171,7 +210,7 @@ public static class ElevationReader
 
     private static Grid<float> Read(RasterSource source, ElevationOptions options, GridFrame frame)
     {
-        var grid = new Grid<float>(frame);
+        var grid = NewGrid<float>(frame, source.Path);
         // In bands of rows: GDAL's own buffers stay small and a damaged file is named by its place.
         var step = Math.Max(1, (1 << 24) / Math.Max(1, frame.Columns));
         for (var row = 0; row < frame.Rows; row += step)
@@ -181,6 +220,24 @@ public static class ElevationReader
         }
 
         return grid;
+    }
+
+    private static Grid<T> NewGrid<T>(GridFrame frame, string path)
+        where T : unmanaged
+    {
+        try
+        {
+            if (frame.Count <= Array.MaxLength) return new Grid<T>(frame);
+        }
+        catch (OutOfMemoryException)
+        {
+            // Said below.
+        }
+
+        throw new InputException(
+            path,
+            string.Create(CultureInfo.InvariantCulture, $"{frame.Rows} rows of {frame.Columns} cells, more than this machine can hold at once"),
+            string.Create(CultureInfo.InvariantCulture, $"a raster cut to the basins of the road, or larger cells by [terrain] cell_size; {Array.MaxLength} cells at most"));
     }
 
     private static void FlipRows(Grid<float> grid)
@@ -197,24 +254,4 @@ public static class ElevationReader
     }
 
     private static string Say(double value) => value.ToString("R", CultureInfo.InvariantCulture);
-}
-
-/// <summary>Codes of reading and writing maps.</summary>
-public static class LayerFindings
-{
-    /// <summary>The terrain model was projected.</summary>
-    public static readonly FindingCode Projected = new(
-        "terrain-projected", Severity.Note, "The terrain model was resampled into the working coordinate system.", "Name working_crs and cell_size in the project file when others serve better.");
-
-    /// <summary>File and project name different systems.</summary>
-    public static readonly FindingCode CrsStatedDiffers = new(
-        "crs-differs", Severity.Warning, "The file and the project file name different coordinate systems.", "Remove crs from the project file, or mend the file.");
-
-    /// <summary>File and project name different vertical units.</summary>
-    public static readonly FindingCode VerticalUnitDiffers = new(
-        "vertical-unit-differs", Severity.Warning, "The file and the project file name different vertical units.", "Check the elevations of a known place before relying on any result.");
-
-    /// <summary>A feature could not be used.</summary>
-    public static readonly FindingCode FeatureLeftOut = new(
-        "feature-left-out", Severity.Warning, "A feature of an input layer could not be used and was left out.", "Mend the feature in its file.");
 }

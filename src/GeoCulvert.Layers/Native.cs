@@ -14,6 +14,8 @@ internal static unsafe partial class Native
     [LibraryImport(L)] public static partial nint CPLSetErrorHandler(delegate* unmanaged<int, int, nint, void> handler);
     [LibraryImport(L, StringMarshalling = U)] public static partial void CPLSetConfigOption(string key, string? value);
     [LibraryImport(L)] public static partial void VSIFree(nint memory);
+    [LibraryImport(L, StringMarshalling = U)] public static partial nint VSIGetMemFileBuffer(string path, ulong* length, int takeOver);
+    [LibraryImport(L, StringMarshalling = U)] public static partial int VSIUnlink(string path);
 
     [LibraryImport(L, StringMarshalling = U)] public static partial nint GDALOpenEx(string path, uint flags, nint drivers, nint options, nint siblings);
     [LibraryImport(L)] public static partial void GDALClose(nint dataset);
@@ -41,6 +43,9 @@ internal static unsafe partial class Native
     [LibraryImport(L)] public static partial nint GDALWarpAppOptionsNew(nint arguments, nint forBinary);
     [LibraryImport(L)] public static partial void GDALWarpAppOptionsFree(nint options);
     [LibraryImport(L, StringMarshalling = U)] public static partial nint GDALWarp(string path, nint dataset, int sources, nint* source, nint options, int* usageError);
+    [LibraryImport(L)] public static partial nint GDALTranslateOptionsNew(nint arguments, nint forBinary);
+    [LibraryImport(L)] public static partial void GDALTranslateOptionsFree(nint options);
+    [LibraryImport(L, StringMarshalling = U)] public static partial nint GDALTranslate(string path, nint dataset, nint options, int* usageError);
     [LibraryImport(L)] public static partial nint GDALBuildVRTOptionsNew(nint arguments, nint forBinary);
     [LibraryImport(L)] public static partial void GDALBuildVRTOptionsFree(nint options);
     [LibraryImport(L, StringMarshalling = U)] public static partial nint GDALBuildVRT(string path, int sources, nint* datasets, nint names, nint options, int* usageError);
@@ -55,6 +60,9 @@ internal static unsafe partial class Native
     [LibraryImport(L)] public static partial double OSRGetLinearUnits(nint srs, nint* name);
     [LibraryImport(L, StringMarshalling = U)] public static partial double OSRGetTargetLinearUnits(nint srs, string key, nint* name);
     [LibraryImport(L)] public static partial int OSRIsCompound(nint srs);
+    [LibraryImport(L)] public static partial int OSRStripVertical(nint srs);
+    [LibraryImport(L)] public static partial int OSRGetAxesCount(nint srs);
+    [LibraryImport(L)] public static partial int OSRDemoteTo2D(nint srs, nint name);
     [LibraryImport(L)] public static partial nint OSRGetName(nint srs);
     [LibraryImport(L)] public static partial int OSRIsSame(nint a, nint b);
     [LibraryImport(L)] public static partial nint OSRGetAuthorityName(nint srs, nint key);

@@ -12,7 +12,10 @@ public sealed unsafe class RasterSource : IDisposable
     private readonly IReadOnlyList<RasterSource> _parts;
     private readonly nint _band;
 
-    private RasterSource(string path, nint dataset, IReadOnlyList<RasterSource> parts)
+    /// <param name="path">Path as given.</param>
+    /// <param name="dataset">Open dataset, owned from here on.</param>
+    /// <param name="parts">What the dataset reads from and must outlive it.</param>
+    internal RasterSource(string path, nint dataset, IReadOnlyList<RasterSource> parts)
     {
         (Path, _dataset, _parts) = (path, new DatasetHandle(dataset), parts);
         Columns = Native.GDALGetRasterXSize(dataset);
@@ -27,6 +30,7 @@ public sealed unsafe class RasterSource : IDisposable
         var nodata = Native.GDALGetRasterNoDataValue(_band, &has);
         NoData = has != 0 ? nodata : null;
         UnitName = Native.Text(Native.GDALGetRasterUnitType(_band));
+        DataType = Native.GDALGetRasterDataType(_band);
         var scale = Native.GDALGetRasterScale(_band, &has);
         Scale = has != 0 && scale != 0 ? scale : 1;
         var offset = Native.GDALGetRasterOffset(_band, &has);
@@ -58,6 +62,9 @@ public sealed unsafe class RasterSource : IDisposable
     /// <summary>Unit of the values as the file says it, or "".</summary>
     public string UnitName { get; }
 
+    /// <summary>GDAL's number of the cell type: 1 byte, 2 and 3 16-bit, 4 and 5 32-bit integers, 6 and 7 floating point.</summary>
+    internal int DataType { get; }
+
     /// <summary>Factor on stored values.</summary>
     public double Scale { get; }
 
@@ -85,7 +92,7 @@ public sealed unsafe class RasterSource : IDisposable
     }
 
     /// <summary>Opens one file, several, or the rasters of a folder as one.</summary>
-    /// <exception cref="InputException">One of them cannot be used, or they do not share a coordinate system.</exception>
+    /// <exception cref="InputException">One of them cannot be used, or they do not share coordinate system, unit, scale and direction.</exception>
     public static RasterSource OpenMany(IReadOnlyList<string> paths)
     {
         ArgumentNullException.ThrowIfNull(paths);
@@ -94,20 +101,7 @@ public sealed unsafe class RasterSource : IDisposable
             : Enumerable.Repeat(p, 1)).ToArray();
         if (files.Length == 0) throw new InputException(string.Join(", ", paths), "no raster in the folder", "files ending in .tif, .tiff, .asc, .img, .vrt, .bil or .flt");
         if (files.Length == 1) return Open(files[0]);
-        var parts = files.Select(Open).ToArray();
-        foreach (var part in parts.Where(p => (p.Crs is null) != (parts[0].Crs is null) || (p.Crs is not null && !p.Crs.IsSameAs(parts[0].Crs!))))
-            throw new InputException(part.Path, $"the coordinate system {part.Crs?.Label ?? "none"}", $"that of the other tiles, {parts[0].Crs?.Label ?? "none"}");
-        Gdal.Clear();
-        using var arguments = new NativeList("-resolution", "highest");
-        var options = Native.GDALBuildVRTOptionsNew(arguments.Pointer, 0);
-        var handles = parts.Select(p => p.Dataset).ToArray();
-        int wrong;
-        fixed (nint* h = handles)
-        {
-            var vrt = Native.GDALBuildVRT("", parts.Length, h, 0, options, &wrong);
-            Native.GDALBuildVRTOptionsFree(options);
-            return new RasterSource(string.Join(", ", paths), Gdal.Check(vrt, "Joining tiles"), parts);
-        }
+        return RasterTiles.Join(string.Join(", ", paths), files);
     }
 
     /// <summary>The raster as it would be after projection; nothing is computed until it is read.</summary>
@@ -124,6 +118,28 @@ public sealed unsafe class RasterSource : IDisposable
         return warped != 0
             ? new RasterSource(Path, warped, [])
             : throw new InputException(Path, $"a raster that cannot be projected ({Gdal.Says()})", "a raster with a known coordinate system");
+    }
+
+    /// <summary>The same raster in memory as float32 with NaN for nodata, the tagged and the stated one; scale and offset are applied.</summary>
+    internal RasterSource Cleaned(double statedNoData)
+    {
+        using var none = new NativeList();
+        var memory = Gdal.Check(Native.GDALCreate(Native.GDALGetDriverByName("MEM"), "", Columns, Rows, 1, Float32, none.Pointer), $"Reading {Path}");
+        var place = GeoTransform.ToArray();
+        fixed (double* six = place) Gdal.Check(Native.GDALSetGeoTransform(memory, six), $"Reading {Path}");
+        var band = Native.GDALGetRasterBand(memory, 1);
+        Gdal.Check(Native.GDALSetRasterNoDataValue(band, double.NaN), $"Reading {Path}");
+        var line = new float[Columns];
+        fixed (float* p = line)
+        {
+            for (var row = 0; row < Rows; row++)
+            {
+                ReadWindow(0, row, Columns, 1, line, statedNoData);
+                Gdal.Check(Native.GDALRasterIO(band, 1, 0, row, Columns, 1, p, Columns, 1, Float32, 0, 0), $"Reading {Path}");
+            }
+        }
+
+        return new RasterSource(Path, memory, []);
     }
 
     /// <summary>Reads a window as float32; nodata becomes NaN, scale and offset are applied.</summary>
