@@ -14,6 +14,7 @@ public static unsafe class RasterWriter
     /// <param name="noData">Value of cells without data, or null.</param>
     /// <param name="unit">Unit of the values, or "".</param>
     /// <exception cref="GdalException">GDAL could not write; the former file is untouched.</exception>
+    /// <exception cref="IOException">The disk or the folder refused; the former file is untouched.</exception>
     public static void WriteCog<T>(string path, Grid<T> grid, WorkingPlane plane, string description, double? noData = null, string unit = "")
         where T : unmanaged
     {
@@ -27,7 +28,7 @@ public static unsafe class RasterWriter
             float => (6, "FLOATING_POINT"),
             _ => throw new ArgumentException($"Cells of {typeof(T).Name} are not written.", nameof(grid)),
         };
-        ResultsWriter.Replace(path, ".tif", temporary =>
+        MovedIntoPlace.FromMemory(path, ".tif", temporary =>
         {
             var frame = grid.Frame;
             var scale = plane.Crs.LinearUnitM;
@@ -46,7 +47,7 @@ public static unsafe class RasterWriter
             using var options = new NativeList("COMPRESS=DEFLATE", $"PREDICTOR={predictor}", "OVERVIEWS=AUTO", "RESAMPLING=NEAREST", "BIGTIFF=IF_SAFER");
             using var written = new DatasetHandle(Gdal.Check(
                 Native.GDALCreateCopy(Native.GDALGetDriverByName("COG"), temporary, memory.Pointer, 1, options.Pointer, 0, 0), $"Writing {path}"));
-            ResultsWriter.Flush(written, path);
+            MovedIntoPlace.Flush(written, path);
         });
     }
 }

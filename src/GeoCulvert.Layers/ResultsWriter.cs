@@ -11,11 +11,12 @@ public static unsafe class ResultsWriter
 
     /// <summary>Writes a GeoPackage 1.3 with every layer and table. The file is written under a temporary name beside it and then moved.</summary>
     /// <exception cref="GdalException">GDAL could not write; the former file is untouched.</exception>
+    /// <exception cref="IOException">The disk or the folder refused; the former file is untouched.</exception>
     public static void WriteGeoPackage(string path, IReadOnlyList<ResultLayer> layers, WorkingPlane plane)
     {
         ArgumentNullException.ThrowIfNull(layers);
         ArgumentNullException.ThrowIfNull(plane);
-        Replace(path, ".gpkg", temporary =>
+        MovedIntoPlace.OnDisk(path, ".gpkg", temporary =>
         {
             using var dataset = Create("GPKG", temporary, "VERSION=1.3");
             Gdal.Check(Native.GDALDatasetStartTransaction(dataset.Pointer, 1), $"Writing {path}");
@@ -26,13 +27,14 @@ public static unsafe class ResultsWriter
 
             Gdal.Check(Native.GDALDatasetCommitTransaction(dataset.Pointer), $"Writing {path}");
             DescribeFields(dataset, layers);
-            Flush(dataset, path);
+            MovedIntoPlace.Flush(dataset, path);
         });
     }
 
     /// <summary>Writes each layer with geometry as RFC 7946 GeoJSON (WGS 84), one file a layer, named after it.</summary>
     /// <returns>The files written.</returns>
-    /// <exception cref="GdalException">GDAL could not write.</exception>
+    /// <exception cref="GdalException">GDAL could not write; the former files are untouched.</exception>
+    /// <exception cref="IOException">The disk or the folder refused; the former file is untouched.</exception>
     public static IReadOnlyList<string> WriteGeoJson(string folder, IReadOnlyList<ResultLayer> layers, WorkingPlane plane)
     {
         ArgumentNullException.ThrowIfNull(layers);
@@ -43,41 +45,16 @@ public static unsafe class ResultsWriter
         foreach (var layer in layers.Where(l => l.Geometry != LayerGeometry.None))
         {
             var path = Path.Combine(folder, layer.Name + ".geojson");
-            Replace(path, ".geojson", temporary =>
+            MovedIntoPlace.FromMemory(path, ".geojson", temporary =>
             {
                 using var dataset = Create("GeoJSON", temporary);
                 WriteLayer(dataset, layer, wgs84, g => transform.Apply(plane.OutOf(g)), ["RFC7946=YES", "WRITE_NAME=YES", $"DESCRIPTION={layer.Description}"]);
-                Flush(dataset, path);
+                MovedIntoPlace.Flush(dataset, path);
             });
             files.Add(path);
         }
 
         return files;
-    }
-
-    internal static void Replace(string path, string extension, Action<string> write)
-    {
-        var temporary = path + ".part" + extension;
-        Gdal.Ensure();
-        Gdal.Clear();
-        try
-        {
-            File.Delete(temporary);
-            write(temporary);
-            File.Move(temporary, path, overwrite: true);
-        }
-        finally
-        {
-            foreach (var rest in new[] { temporary, temporary + "-journal", temporary + "-wal", temporary + "-shm" }) File.Delete(rest);
-        }
-    }
-
-    internal static void Flush(DatasetHandle dataset, string path)
-    {
-        Gdal.Clear();
-        Native.GDALFlushCache(dataset.Pointer);
-        var says = Gdal.Says();
-        if (says.Length > 0) throw new GdalException($"Writing {path}", says);
     }
 
     private static DatasetHandle Create(string driver, string path, params IReadOnlyList<string> options)
@@ -173,6 +150,11 @@ public static unsafe class ResultsWriter
     /// <summary>Titles and descriptions of the fields, by the GeoPackage schema extension.</summary>
     private static void DescribeFields(DatasetHandle dataset, IReadOnlyList<ResultLayer> layers)
     {
+        // GDAL makes this table only when a layer needs it, as spatial ones do.
+        Sql(dataset, """
+            CREATE TABLE IF NOT EXISTS gpkg_extensions (table_name TEXT, column_name TEXT, extension_name TEXT NOT NULL, definition TEXT NOT NULL,
+            scope TEXT NOT NULL, CONSTRAINT ge_tce UNIQUE (table_name, column_name, extension_name))
+            """);
         Sql(dataset, """
             CREATE TABLE gpkg_data_columns (table_name TEXT NOT NULL, column_name TEXT NOT NULL, name TEXT, title TEXT, description TEXT,
             mime_type TEXT, constraint_name TEXT, CONSTRAINT pk_gdc PRIMARY KEY (table_name, column_name), CONSTRAINT gdc_tn UNIQUE (table_name, name))
