@@ -54,7 +54,6 @@ public static unsafe class Gdal
         Native.CPLSetErrorHandler(&OnError);
         // Same input, same bytes: no clock in the files written.
         Native.CPLSetConfigOption("OGR_CURRENT_DATE", "2000-01-01T00:00:00.000Z");
-        Native.CPLSetConfigOption("GDAL_PAM_ENABLED", "NO");
         Native.CPLSetConfigOption("CPL_DEBUG", "OFF");
         Native.GDALAllRegister();
         return Native.Text(Native.GDALVersionInfo("RELEASE_NAME"));

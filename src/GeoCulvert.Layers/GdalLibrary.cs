@@ -39,7 +39,12 @@ internal static class GdalLibrary
 
     private static IEnumerable<string> Candidates()
     {
-        if (Environment.GetEnvironmentVariable("GEOCULVERT_GDAL") is { Length: > 0 } named) yield return named;
+        if (Environment.GetEnvironmentVariable("GEOCULVERT_GDAL") is { Length: > 0 } named)
+        {
+            yield return named; // and no other: a library that was named is not silently replaced
+            yield break;
+        }
+
         if (OperatingSystem.IsWindows())
         {
             for (var abi = 312; abi >= 300; abi--) yield return $"gdal{abi}.dll";

@@ -1,6 +1,7 @@
 using GeoCulvert.Design.Basis;
 using NetTopologySuite.Geometries;
 using NetTopologySuite.IO;
+using NetTopologySuite.Operation.Valid;
 
 namespace GeoCulvert.Layers;
 
@@ -103,6 +104,8 @@ public static unsafe class VectorSource
             var geometry = new WKBReader().Read(bytes);
             if (geometry.IsEmpty) return (null, "an empty geometry");
             if (geometry.Coordinates.Any(c => !double.IsFinite(c.X) || !double.IsFinite(c.Y))) return (null, "coordinates that are not finite");
+            if (geometry is ILineal && geometry.Length == 0) return (null, "a line without length");
+            if (geometry is IPolygonal && new IsValidOp(geometry).ValidationError is { } wrong) return (null, $"an invalid polygon ({wrong})");
             return (plane.Into(geometry, crs), "");
         }
         catch (Exception e) when (e is ParseException or ArgumentException or GdalException)
