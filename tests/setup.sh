@@ -25,13 +25,13 @@ install() {
 }
 
 need_dotnet() {
-  command -v dotnet >/dev/null && dotnet --list-sdks | grep -q '^10\.' && return 0
+  command -v dotnet >/dev/null && dotnet --list-sdks | grep '^10\.' >/dev/null && return 0
   say "A .NET 10 SDK is needed and was not found on PATH. Install it from your distribution or from Microsoft's package feed, then run this again."
   return 1
 }
 
 need_gdal() {
-  ldconfig -p 2>/dev/null | grep -q 'libgdal\.so\.' && return 0
+  ldconfig -p 2>/dev/null | grep 'libgdal\.so\.' >/dev/null && return 0 # not grep -q: with pipefail a closed pipe would look like a miss
   [ -n "${GEOCULVERT_GDAL:-}" ] && return 0
   if apt-cache show libgdal32 >/dev/null 2>&1 || { [ "$(id -u)" -eq 0 ] && apt-get update -qq >/dev/null 2>&1 && apt-cache show libgdal32 >/dev/null 2>&1; }; then
     install libgdal32
