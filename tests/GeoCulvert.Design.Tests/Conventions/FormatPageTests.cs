@@ -6,8 +6,8 @@ using GeoCulvert.Design.Study;
 namespace GeoCulvert.Design.Tests.Conventions;
 
 /// <summary>
-/// docs/formats/layers.md and findings.md say what the program's own definitions say. With GEOCULVERT_WRITE_DOCS=1 in the
-/// environment the tests write the pages instead of comparing them.
+/// docs/formats/layers.md says what the program's own definitions say. With GEOCULVERT_WRITE_DOCS=1 in the
+/// environment the test writes the page instead of comparing it.
 /// </summary>
 public class FormatPageTests
 {
@@ -34,24 +34,6 @@ public class FormatPageTests
         Add(page, ResultLayers.Findings);
         Add(page, ResultLayers.Run);
         Same(page.ToString(), "layers.md");
-    }
-
-    [Fact]
-    public void TheFindingPageIsTheProgramsOwn()
-    {
-        var page = new StringBuilder("""
-            # Findings
-
-            Every doubt is a finding with a stable code. `error`: the result is missing or must not be used; `warning`: look at this before you rely on the
-            result; `note`: worth knowing. Written from the program's own catalogue; a test holds the two together.
-
-            | code | severity | what was seen | what to do |
-            |---|---|---|---|
-
-            """.ReplaceLineEndings("\n"));
-        foreach (var code in NameTests.Codes().OrderBy(c => c.Code, StringComparer.Ordinal))
-            page.Append(CultureInfo.InvariantCulture, $"| `{code.Code}` | {code.Severity.ToString().ToLowerInvariant()} | {code.Meaning} | {code.Action} |\n");
-        Same(page.ToString(), "findings.md");
     }
 
     private static void Add<T>(StringBuilder page, LayerDefinition<T> layer)
