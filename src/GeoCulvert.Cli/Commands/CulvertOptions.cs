@@ -9,7 +9,7 @@ internal sealed class CulvertOptions
     public Option<string> Shape { get; } = new("--shape") { Description = "Shape of the barrel.", DefaultValueFactory = _ => "circle" };
 
     /// <summary>Barrels side by side.</summary>
-    public Option<string?> Barrels { get; } = Text("--barrels", "Equal barrels side by side (default 1).");
+    public Option<string?> Barrels { get; } = Text("--barrels", "Equal barrels side by side (rate: default 1; size: the largest number allowed, default 4).");
 
     /// <summary>Inlet type.</summary>
     public Option<string?> Inlet { get; } = Text(
