@@ -7,7 +7,7 @@ public readonly record struct ProfilePoint(double DistanceM, double DepthM);
 
 /// <summary>The water-surface profile of one barrel and what follows from it.</summary>
 /// <param name="Name">Chow's classes from inlet to outlet, "full" where the barrel is full: "S2", "M2", "full + M2".</param>
-/// <param name="InletDepthM">Depth or pressure head at the inlet of the profile that outlet control is reckoned from, m.</param>
+/// <param name="InletDepthM">Depth or pressure head at the inlet that outlet control is reckoned from, m.</param>
 /// <param name="HeadwaterM">Outlet-control headwater above the inlet invert, m.</param>
 /// <param name="OutletDepthM">Depth at the outlet, not above the rise, m.</param>
 /// <param name="CriticalDepthM">Critical depth, m.</param>
@@ -43,7 +43,7 @@ public static class BarrelFlow
         ArgumentNullException.ThrowIfNull(section);
         var reach = new Reach(section, flowM3PerS, roughnessN, lengthM, slopeMPerM);
         double D = section.RiseM, dc = reach.CriticalDepthM;
-        var surface = new Surface(D);
+        var surface = new Surface();
         var start = Math.Max(dc, tailwaterDepthM);
         reach.FromOutlet(surface, start);
         var inletDepth = surface.AtInlet;
@@ -52,17 +52,44 @@ public static class BarrelFlow
         if (reach.IsSteep && surface.ReachesCriticalAtM is { } end)
         {
             // The inlet is not drowned: supercritical from critical depth at the inlet, until its specific force no longer beats that of the water below.
-            var fast = new Surface(D);
+            var fast = new Surface();
             reach.FromInlet(fast);
             jump = reach.Jump(fast, surface, end);
             surface = Surface.Join(fast, surface, jump ?? lengthM);
             inletDepth = dc;
         }
 
-        var area = section.AreaM2(Math.Min(inletDepth, D));
-        var head = flowM3PerS * flowM3PerS / (area * area) / (2 * OpenChannelFlow.GravityMPerS2);
+        var headwater = Entered(section, flowM3PerS, entranceLoss, reach, ref inletDepth);
         return new BarrelProfile(
-            surface.Name, inletDepth, inletDepth + ((1 + entranceLoss) * head), Math.Min(surface.AtOutlet, D), dc, reach.NormalDepthM, surface.FullLengthM,
-            jump, surface.FromInlet());
+            surface.Name, inletDepth, headwater, Math.Min(surface.AtOutlet, D), dc, reach.NormalDepthM, surface.FullLengthM, jump, surface.FromInlet());
+    }
+
+    /// <summary>Only the headwater of <see cref="Profile"/>, m, for a search.</summary>
+    internal static double HeadwaterM(
+        ISection section, double flowM3PerS, double roughnessN, double entranceLoss, double lengthM, double slopeMPerM, double tailwaterDepthM)
+    {
+        var reach = new Reach(section, flowM3PerS, roughnessN, lengthM, slopeMPerM);
+        var surface = new Surface(keepsPoints: false);
+        reach.FromOutlet(surface, Math.Max(reach.CriticalDepthM, tailwaterDepthM));
+        var inletDepth = reach.IsSteep && surface.ReachesCriticalAtM is not null ? reach.CriticalDepthM : surface.AtInlet;
+        return Entered(section, flowM3PerS, entranceLoss, reach, ref inletDepth);
+    }
+
+    /// <summary>Headwater above a depth at the inlet, and the depth it is reckoned from.</summary>
+    private static double Entered(ISection section, double flowM3PerS, double entranceLoss, Reach reach, ref double inletDepth)
+    {
+        var headwater = Headwater(section, flowM3PerS, entranceLoss, inletDepth);
+        // Where a rising flow just drowns an inlet with nearly critical depth, depth grows so fast that the entrance loss would shrink and headwater with it.
+        // A drowned inlet is never let below the free one, so that headwater rises with flow (own rule; on the high side).
+        var freeDepth = Math.Max(reach.CriticalDepthM, reach.NormalDepthM ?? section.RiseM);
+        if (inletDepth <= freeDepth || Headwater(section, flowM3PerS, entranceLoss, freeDepth) is var free && free <= headwater) return headwater;
+        inletDepth = freeDepth;
+        return free;
+    }
+
+    private static double Headwater(ISection section, double flowM3PerS, double entranceLoss, double inletDepthM)
+    {
+        var area = section.AreaM2(Math.Min(inletDepthM, section.RiseM));
+        return inletDepthM + ((1 + entranceLoss) * flowM3PerS * flowM3PerS / (area * area) / (2 * OpenChannelFlow.GravityMPerS2));
     }
 }

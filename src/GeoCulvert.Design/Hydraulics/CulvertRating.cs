@@ -88,6 +88,9 @@ public static class CulvertHydraulics
     /// <summary>Share by which the two controls may differ and still be near a tie.</summary>
     public const double TieShare = 0.02;
 
+    // A barrel that carries less than this share beside a road is taken as empty.
+    private const double LeastBarrelShare = 1e-9;
+
     /// <summary>Headwater and all that belongs to it for one total flow.</summary>
     /// <param name="site">Culvert, tailwater and road.</param>
     /// <param name="flowM3PerS">Total flow, m3/s, not negative.</param>
@@ -102,14 +105,18 @@ public static class CulvertHydraulics
         {
             double Surplus(double through) =>
                 through + RoadOvertopping.FlowM3PerS(road, HeadwaterElevationM(site, through, tailwater), tailwater) - flowM3PerS;
-            // A road below the inlet invert, or drowned from below, takes all the water: none needs the barrel, and the weir alone sets the level.
-            barrelFlow = Surplus(0) >= 0 ? 0 : RootFinding.Bracketed(Surplus, 0, flowM3PerS);
-            if (Math.Abs(Surplus(barrelFlow)) > 1e-9 * flowM3PerS && barrelFlow > 0) barrelFlow = SplitByLevel(site, road, flowM3PerS, tailwater);
-            if (barrelFlow < 1e-9 * flowM3PerS)
+            var least = LeastBarrelShare * flowM3PerS;
+            if (Surplus(least) < 0)
             {
+                barrelFlow = RootFinding.Bracketed(Surplus, least, flowM3PerS);
+            }
+            else
+            {
+                // A road below the inlet invert, or drowned from below, takes all the water: the weir alone sets the level, never below the tailwater.
                 barrelFlow = 0;
-                still = RootFinding.Bracketed(
+                var level = RootFinding.Bracketed(
                     z => RoadOvertopping.FlowM3PerS(road, z, tailwater) - flowM3PerS, road.LowestM, HeadwaterElevationM(site, flowM3PerS, tailwater));
+                still = Math.Max(level, tailwater);
             }
         }
 
@@ -124,27 +131,8 @@ public static class CulvertHydraulics
         var flow = barrelFlowM3PerS / b.Count;
         if (flow <= 0) return Math.Max(b.InletElevationM, tailwaterM);
         var inlet = InletControl.Headwater(b.Section, b.Inlet, flow, b.SlopeMPerM).HeadwaterM;
-        var outlet = BarrelFlow.Profile(b.Section, flow, b.RoughnessN, b.EntranceLossCoefficient, b.LengthM, b.SlopeMPerM, tailwaterM - b.OutletElevationM).HeadwaterM;
+        var outlet = BarrelFlow.HeadwaterM(b.Section, flow, b.RoughnessN, b.EntranceLossCoefficient, b.LengthM, b.SlopeMPerM, tailwaterM - b.OutletElevationM);
         return b.InletElevationM + Math.Max(inlet, outlet);
-    }
-
-    /// <summary>
-    /// The split sought by headwater level instead of by flow: where the tailwater drowns road and barrel, a hair of head moves all the flow and the search
-    /// by flow cannot settle.
-    /// </summary>
-    private static double SplitByLevel(CulvertSite site, RoadCrest road, double flowM3PerS, double tailwater)
-    {
-        double Through(double z)
-        {
-            double Above(double q) => HeadwaterElevationM(site, q, tailwater) - z;
-            return Above(0) >= 0 ? 0 : Above(flowM3PerS) <= 0 ? flowM3PerS : RootFinding.Bracketed(Above, 0, flowM3PerS);
-        }
-
-        var level = RootFinding.Bracketed(
-            z => Through(z) + RoadOvertopping.FlowM3PerS(road, z, tailwater) - flowM3PerS,
-            Math.Max(road.LowestM, HeadwaterElevationM(site, 0, tailwater)),
-            HeadwaterElevationM(site, flowM3PerS, tailwater));
-        return Through(level);
     }
 
     private static CulvertRating Detail(CulvertSite site, double total, double barrelFlow, double tailwater, double still)

@@ -5,9 +5,12 @@ namespace GeoCulvert.Design.Hydraulics;
 /// <summary>One barrel with one flow: integrates its surface upstream or downstream.</summary>
 internal sealed class Reach
 {
-    // Steps of depth: enough that the surface agrees with a ten-times finer one to 1e-4 of the rise (tested).
-    private const int Steps = 24;
-    private const double Ratio = 0.72;
+    // First division of the depths; each step is halved until two Simpson rules agree on its length and it is short beside the barrel.
+    private const int Steps = 6;
+    private const double Ratio = 0.4;
+    private const double ShareOfLength = 2e-5;
+    private const double LongestShare = 1.0 / 6;
+    private const double LeastShareOfRise = 1e-10;
     private readonly ISection _section;
     private readonly double _flow;
     private readonly double _n;
@@ -52,21 +55,7 @@ internal sealed class Reach
         surface.Start(new ProfilePoint(0, CriticalDepthM), upstream: false);
         surface.Class("S2");
         double x = 0, y = CriticalDepthM;
-        foreach (var next in Toward(CriticalDepthM, yn))
-        {
-            var step = Distance(y, next);
-            if (x + step >= _length)
-            {
-                surface.Add(_length, Within(y, next, _length - x));
-                return;
-            }
-
-            x += step;
-            y = next;
-            surface.Add(x, y);
-        }
-
-        surface.Add(_length, yn);
+        if (!Toward(surface, ref x, ref y, yn, downstream: true)) surface.Add(_length, yn);
     }
 
     /// <summary>Where a jump lets the fast surface pass into the slow one; null when the slow one is swept out of the barrel.</summary>
@@ -118,22 +107,8 @@ internal sealed class Reach
 
         surface.Class(name);
         if (y >= D) y = D * (1 - 1e-9);
-        foreach (var next in target == D || IsSteep ? Even(y, target) : Toward(y, target))
-        {
-            var step = -Distance(y, next);
-            if (!(step > 0)) break; // at the end of the range the surface no longer moves
-            if (x - step <= 0)
-            {
-                var last = Within(y, next, -x);
-                surface.Add(0, last);
-                return (0, last);
-            }
-
-            x -= step;
-            y = next;
-            surface.Add(x, y);
-        }
-
+        var atInlet = target == D || IsSteep ? Even(surface, ref x, ref y, target) : Toward(surface, ref x, ref y, target, downstream: false);
+        if (atInlet) return (0, y);
         if (target == D) return (x, D);
         if (IsSteep)
         {
@@ -153,6 +128,83 @@ internal sealed class Reach
         return (1 - froude2) / (_slope - OpenChannelFlow.FrictionSlope(_section, _flow, _n, y));
     }
 
+    /// <summary>Passes depths ever closer to a normal depth, which is never reached; true when the end of the barrel is.</summary>
+    private bool Toward(Surface surface, ref double x, ref double y, double normalDepth, bool downstream)
+    {
+        var gap = y - normalDepth;
+        var least = Math.Max(y, normalDepth) * 1e-6;
+        for (var at = DxDy(y); Math.Abs(gap) > least;)
+        {
+            gap *= Ratio;
+            var next = normalDepth + gap;
+            var atNext = DxDy(next);
+            if (Pass(surface, ref x, ref y, next, at, DxDy((y + next) / 2), atNext, downstream)) return true;
+            at = atNext;
+        }
+
+        return false;
+    }
+
+    /// <summary>Passes depths upstream to one that is reached; true when the inlet comes first.</summary>
+    private bool Even(Surface surface, ref double x, ref double y, double target)
+    {
+        var (start, at) = (y, DxDy(y));
+        for (var i = 1; i <= Steps; i++)
+        {
+            var next = i == Steps ? target : start + ((target - start) * i / Steps);
+            var atNext = DxDy(next);
+            if (Pass(surface, ref x, ref y, next, at, DxDy((y + next) / 2), atNext, downstream: false)) return true;
+            at = atNext;
+        }
+
+        return false;
+    }
+
+    /// <summary>
+    /// Moves the surface from one depth to another by Simpson's rule on dx/dy, halving the step until the rule on its two halves agrees with that on the whole;
+    /// true when the end of the barrel comes first, which is then the last point.
+    /// </summary>
+    private bool Pass(Surface surface, ref double x, ref double y, double to, double atFrom, double atMiddle, double atTo, bool downstream)
+    {
+        double from = y, middle = (from + to) / 2, toward = downstream ? 1 : -1;
+        double atFirst = DxDy((from + middle) / 2), atSecond = DxDy((middle + to) / 2);
+        var twelfth = toward * (to - from) / 12;
+        var whole = 2 * twelfth * (atFrom + (4 * atMiddle) + atTo);
+        var first = twelfth * (atFrom + (4 * atFirst) + atMiddle);
+        var length = first + (twelfth * (atMiddle + (4 * atSecond) + atTo));
+        var canSplit = Math.Abs(to - from) > LeastShareOfRise * _section.RiseM;
+        if (canSplit && !(Math.Abs(length - whole) <= ShareOfLength * _length && length <= LongestShare * _length))
+        {
+            return Pass(surface, ref x, ref y, middle, atFrom, atFirst, atMiddle, downstream)
+                || Pass(surface, ref x, ref y, to, atMiddle, atSecond, atTo, downstream);
+        }
+
+        var left = downstream ? _length - x : x;
+        var end = downstream ? _length : 0;
+        length += (length - whole) / 15; // what is left of the error (Richardson)
+        if (!double.IsFinite(length))
+        {
+            // Friction equals the bed slope here: the surface keeps its depth.
+            surface.Add(x = end, y);
+            return true;
+        }
+
+        if (length >= left)
+        {
+            y = Within(from, to, toward * left);
+            surface.Add(x = end, y);
+            return true;
+        }
+
+        // At critical depth rounding may give a length just below nothing.
+        first = Math.Clamp(first, 0, Math.Max(0, length));
+        surface.Add(x + (toward * first), middle);
+        x += toward * Math.Max(0, length);
+        y = to;
+        surface.Add(x, y);
+        return false;
+    }
+
     /// <summary>Distance between two depths by Simpson's rule, downstream positive.</summary>
     private double Distance(double from, double to) =>
         (to - from) / 6 * (DxDy(from) + (4 * DxDy((from + to) / 2)) + DxDy(to));
@@ -163,23 +215,5 @@ internal sealed class Reach
         if (distance == 0) return from;
         double Excess(double y) => Distance(from, y) - distance;
         return Math.Sign(Excess(to)) == Math.Sign(-distance) ? to : RootFinding.Bracketed(Excess, from, to);
-    }
-
-    /// <summary>Depths from one to another, ever closer to the second, which is never reached.</summary>
-    private static IEnumerable<double> Toward(double from, double to)
-    {
-        var gap = from - to;
-        var least = Math.Max(Math.Abs(from), Math.Abs(to)) * 1e-7;
-        while (Math.Abs(gap) > least)
-        {
-            gap *= Ratio;
-            yield return to + gap;
-        }
-    }
-
-    /// <summary>Depths from one to another in even steps.</summary>
-    private static IEnumerable<double> Even(double from, double to)
-    {
-        for (var i = 1; i <= Steps; i++) yield return i == Steps ? to : from + ((to - from) * i / Steps);
     }
 }

@@ -1,10 +1,11 @@
 namespace GeoCulvert.Design.Hydraulics;
 
 /// <summary>A water surface while it is being computed: points in either direction, classes met on the way.</summary>
-internal sealed class Surface(double riseM)
+/// <param name="keepsPoints">Whether points and classes are kept; without them only the last point and the lengths are known.</param>
+internal sealed class Surface(bool keepsPoints = true)
 {
-    private readonly List<ProfilePoint> _points = new(48);
-    private readonly List<string> _names = new(3);
+    private readonly List<ProfilePoint> _points = keepsPoints ? new(48) : new(1);
+    private readonly List<string> _names = keepsPoints ? new(3) : [];
     private bool _upstream;
 
     /// <summary>Distance at which a subcritical surface of a steep barrel comes down to critical depth, or null.</summary>
@@ -26,10 +27,16 @@ internal sealed class Surface(double riseM)
         _points.Add(point);
     }
 
-    public void Add(double distanceM, double depthM) => _points.Add(new ProfilePoint(distanceM, depthM));
+    public void Add(double distanceM, double depthM)
+    {
+        var point = new ProfilePoint(distanceM, depthM);
+        if (keepsPoints) _points.Add(point);
+        else _points[0] = point;
+    }
 
     public void Class(string name)
     {
+        if (!keepsPoints) return;
         if (_names.Count == 0 || _names[^1] != name) _names.Add(name);
     }
 
@@ -60,7 +67,7 @@ internal sealed class Surface(double riseM)
     /// <summary>The supercritical surface down to a distance and the subcritical one from there.</summary>
     public static Surface Join(Surface fast, Surface slow, double atM)
     {
-        var joined = new Surface(fast.RiseM);
+        var joined = new Surface();
         foreach (var p in fast.FromInlet().Where(p => p.DistanceM <= atM)) joined._points.Add(p);
         foreach (var name in fast._names) joined._names.Add(name);
         var length = slow._points[0].DistanceM;
@@ -72,6 +79,4 @@ internal sealed class Surface(double riseM)
         joined.FullLengthM = Math.Min(slow.FullLengthM, length - atM);
         return joined;
     }
-
-    private double RiseM => riseM;
 }

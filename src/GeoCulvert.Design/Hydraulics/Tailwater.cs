@@ -23,7 +23,7 @@ public sealed record FixedTailwater(double LevelM) : ITailwater
     public double ElevationM(double flowM3PerS) => LevelM;
 }
 
-/// <summary>A table of flow and level, straight between its points; the ends are held and flagged by the caller.</summary>
+/// <summary>A table of flow and level, straight between its points and held at its ends.</summary>
 public sealed record RatingTailwater : ITailwater
 {
     private readonly IReadOnlyList<(double FlowM3PerS, double LevelM)> _points;

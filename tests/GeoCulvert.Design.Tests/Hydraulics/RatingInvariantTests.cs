@@ -48,6 +48,62 @@ public class RatingInvariantTests
         iter: 3000);
 
     [Fact]
+    public void HeadwaterRisesThroughTheDrowningOfASteepInlet()
+    {
+        // Tailwater that reaches up to the inlet and slopes about and above the critical one: where depth at the inlet changes fastest with flow.
+        var sites =
+            from barrel in Barrel
+            from n in Gen.Double[0.009, 0.02]
+            from slope in Gen.Double[0.003, 0.05]
+            from length in Gen.Double[10, 60]
+            from over in Gen.Double[0.3, 1.2]
+            select new CulvertSite(
+                new CulvertBarrels(barrel.Section, 1, barrel.Inlet, n, barrel.Inlet.EntranceLossCoefficient, length, 100, 100 - (slope * length)),
+                new FixedTailwater(100 + (over * barrel.Section.RiseM)), null);
+        var drowned = 0;
+        sites.Sample(
+            site =>
+            {
+                var largest = 5 * site.Barrels.AreaM2 * Math.Sqrt(site.Barrels.Section.RiseM) / InletControl.Ku;
+                var last = 0.0;
+                for (var i = 1; i <= 120; i++)
+                {
+                    var r = CulvertHydraulics.Rate(site, largest * i / 120);
+                    if (r.HeadwaterM < last - (1e-7 * site.Barrels.Section.RiseM)) return false;
+                    last = r.HeadwaterM;
+                    if (r.Profile.Name.StartsWith("S1", StringComparison.Ordinal)) Interlocked.Increment(ref drowned);
+                }
+
+                return true;
+            },
+            iter: 300);
+        Assert.True(drowned > 1000, $"only {drowned} ratings with a drowned steep inlet");
+    }
+
+    [Fact]
+    public void ADrownedRoadNeverLeavesHeadwaterBelowTailwater()
+    {
+        // The published submergence curve of gravel ends above 0, so the weir alone would pass the flow from below the tailwater.
+        var barrels = new CulvertBarrels(new CircleSection(0.6), 1, InletCatalogue.Find("hds5-1-1", "test"), 0.012, 0.5, 20, 100, 99.8);
+        var site = new CulvertSite(barrels, new FixedTailwater(103), RoadCrest.Level(101.5, 30, 8, RoadSurface.Gravel));
+        foreach (var flow in new[] { 0.01, 0.1, 1, 5, 20, 60, 200 })
+            Assert.True(CulvertHydraulics.Rate(site, flow).HeadwaterElevationM >= 103, $"{flow} m3/s: {CulvertHydraulics.Rate(site, flow).HeadwaterElevationM}");
+    }
+
+    [Fact]
+    public void EqualBarrelsShareTheFlowAndAreNotOneWideBox()
+    {
+        var one = new CulvertBarrels(new BoxSection(2, 1.5), 1, InletCatalogue.Find("hds5-8-1", "test"), 0.015, 0.4, 60, 100, 100);
+        var tailwater = new FixedTailwater(100.6);
+        var single = CulvertHydraulics.Rate(new CulvertSite(one, tailwater, null), 4);
+        var three = CulvertHydraulics.Rate(new CulvertSite(one with { Count = 3 }, tailwater, null), 12);
+        Assert.Equal(single.HeadwaterM, three.HeadwaterM, 1e-9);
+        Assert.Equal(single.OutletVelocityMPerS, three.OutletVelocityMPerS, 1e-9);
+        var wide = CulvertHydraulics.Rate(new CulvertSite(one with { Section = new BoxSection(6, 1.5) }, tailwater, null), 12);
+        Assert.True(wide.OutletControlHeadwaterM < three.OutletControlHeadwaterM - 0.005); // two inner walls less of friction
+    }
+
+    [Fact]
     public void MoreBarrelsNeverRaiseHeadwater() => Gen.Select(Site, Gen.Double[0.1, 5]).Sample(
         (site, x) =>
         {
