@@ -29,8 +29,7 @@ public class HydraulicsOracleTests
             "inlet" => Inlet(row, L, Q()) / (row.Text("quantity") == "HWi/D" ? L("rise") : us ? Foot : 1),
             "outlet" => Outlet(row, L, Q()).HeadwaterM / (us ? Foot : 1),
             "head" => Shorthand(row, L, Q()).HeadLossM / (us ? Foot : 1),
-            // Q = Cr L H^1.5 with the example's own coefficient; US coefficient times 0.552 in SI.
-            "weir" => (us ? 1 : 0.552) * row.Number("roughness") * row.Number("length") * Math.Pow(row.Number("rise"), 1.5),
+            "weir" => Weir(row, L) / (us ? Math.Pow(Foot, 3) : 1),
             "normal" => OpenChannelFlow.NormalDepthM(new TrapezoidSection(L("span"), row.Number("rise")), Q(), row.Number("roughness") * (id == "L1" ? RoundedConversion : 1), row.Number("slope"))!.Value / (us ? Foot : 1),
             "half-full" => HalfFull(row, L("span")) / Math.Pow(Foot, 3),
             var kind => throw new InvalidOperationException(kind),
@@ -38,14 +37,12 @@ public class HydraulicsOracleTests
         Assert.Equal(expected, computed, expected * row.Number("tolerance_pct") / 100);
     }
 
-    [Fact]
-    public void TheWeirFormulaIsTheProgramsOwn()
-    {
-        // HDS-5 2nd ed. problem 4: gravel road of 200 ft, head 0.5 ft, Cd 2.70: 191 cfs. The table's coefficient at 0.5 ft is the example's.
-        Assert.Equal(2.70, RoadOvertopping.CoefficientUs(0.5 * Foot, 60 * Foot, RoadSurface.Gravel), 1e-9);
-        var crest = RoadCrest.Level(10, 200 * Foot, 60 * Foot, RoadSurface.Gravel);
-        Assert.Equal(191, RoadOvertopping.FlowM3PerS(crest, 10 + (0.5 * Foot), 0) / Math.Pow(Foot, 3), 1.91);
-    }
+    [Theory]
+    [InlineData(0.5, 2.70)]
+    [InlineData(1.5, 2.92)]
+    public void TheWeirCoefficientIsTheExamplesOwn(double headFt, double published) =>
+        // HDS-5 2nd ed. problem 4 (VERIFIED), gravel; the table itself is MEMORY, within 3 % of the chart.
+        Assert.Equal(published, RoadOvertopping.CoefficientUs(headFt * Foot, 60 * Foot, RoadSurface.Gravel), 0.01 * published);
 
     [Theory]
     [MemberData(nameof(PolynomialInlets))]
@@ -98,6 +95,10 @@ public class HydraulicsOracleTests
 
     private static ISection Section(TableRow row, Func<string, double> L) =>
         row.Text("inlet").StartsWith("hds5-8", StringComparison.Ordinal) ? new BoxSection(L("span"), L("rise")) : new CircleSection(L("span"));
+
+    /// <summary>Free flow over a level gravel road of the program's own coefficients; wide enough to be shallow flow.</summary>
+    private static double Weir(TableRow row, Func<string, double> L) =>
+        RoadOvertopping.FlowM3PerS(RoadCrest.Level(10, L("length"), 60 * Foot, RoadSurface.Gravel), 10 + L("rise"), 0);
 
     private static double HalfFull(TableRow row, double D) =>
         OpenChannelFlow.ConveyanceFactor(new CircleSection(D), D / 2) * Math.Sqrt(row.Number("slope")) / row.Number("roughness");
