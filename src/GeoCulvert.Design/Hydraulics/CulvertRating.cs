@@ -106,9 +106,12 @@ public static class CulvertHydraulics
             double Surplus(double through) =>
                 through + RoadOvertopping.FlowM3PerS(road, HeadwaterElevationM(site, through, tailwater), tailwater) - flowM3PerS;
             var least = LeastBarrelShare * flowM3PerS;
-            if (Surplus(least) < 0)
+            // Barrels mostly carry a fair share: come down to it by quarters, so that the search begins close.
+            double high = flowM3PerS, low = flowM3PerS / 4;
+            while (low > least && Surplus(low) >= 0) (high, low) = (low, low / 4);
+            if (low > least || Surplus(low = least) < 0)
             {
-                barrelFlow = RootFinding.Bracketed(Surplus, least, flowM3PerS);
+                barrelFlow = RootFinding.Bracketed(Surplus, low, high);
             }
             else
             {
