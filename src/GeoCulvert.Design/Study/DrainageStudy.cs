@@ -22,7 +22,7 @@ public static class DrainageStudy
         var frame = inputs.Elevation.Frame;
 
         // Make water leave: depressions filled, flats drained, directions and accumulation.
-        var terrain = stages.Run("terrain", frame.Count, p => Drainage.Solve(inputs.Elevation, p, cancel));
+        var terrain = stages.Run("terrain", frame.Count, p => Drainage.Solve(inputs.Elevation, null, p, cancel));
         cancel.ThrowIfCancellationRequested();
 
         // Where water crosses the road: found along it, or given and moved to the stream.

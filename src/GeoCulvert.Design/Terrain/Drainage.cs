@@ -44,9 +44,11 @@ public static class Drainage
 
     /// <summary>Fills, resolves directions and counts.</summary>
     /// <param name="elevation">Elevations, m; NaN is nodata. Kept, not changed.</param>
+    /// <param name="forced">Ways that water is made to take (<see cref="ForcedPaths"/>); null for none.</param>
     /// <param name="progress">Share done, 0-1.</param>
     /// <param name="cancel">Stops the work.</param>
-    public static DrainedTerrain Solve(Grid<float> elevation, IProgress<double>? progress = null, CancellationToken cancel = default)
+    public static DrainedTerrain Solve(
+        Grid<float> elevation, IReadOnlyList<int[]>? forced = null, IProgress<double>? progress = null, CancellationToken cancel = default)
     {
         ArgumentNullException.ThrowIfNull(elevation);
 
@@ -56,6 +58,7 @@ public static class Drainage
         cancel.ThrowIfCancellationRequested();
         progress?.Report(0.5);
         var direction = FlowDirections.Resolve(filled.Surface, shared);
+        if (forced is { Count: > 0 }) ForcedPaths.Apply(direction, filled.Surface, forced);
         cancel.ThrowIfCancellationRequested();
         progress?.Report(0.8);
         var accumulation = FlowAccumulation.Count(direction, elevation, shared);
