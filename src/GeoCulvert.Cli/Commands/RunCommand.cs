@@ -32,7 +32,8 @@ internal static class RunCommand
         var stages = new TimedStages(terminal);
         var loaded = stages.Run("reading", null, _ => StudyLoader.Load(path));
         using var folder = ResultsFolder.Open(loaded.OutputFolder, $"{Path.GetFileName(path)}, [study] folder");
-        var result = DrainageStudy.Run(loaded.Inputs, loaded.Settings, stages, cancel);
+        var inputs = loaded.Inputs with { Former = FormerRun.Read(loaded.OutputFolder, loaded.Plane.Crs.Label) };
+        var result = DrainageStudy.Run(inputs, loaded.Settings, stages, cancel);
         result = result with { Findings = [.. loaded.Findings, .. result.Findings] };
         var settings = SettingsText.Of(path);
         var report = Report(loaded, result, settings);

@@ -34,8 +34,23 @@ internal static class ClosingTable
         output.WriteLine();
         var counts = string.Join(", ", result.Crossings.GroupBy(c => c.Status).OrderBy(g => g.Key, StringComparer.Ordinal).Select(g => $"{g.Count()} {g.Key}"));
         output.WriteLine($"{result.Crossings.Count} crossings: {(counts.Length > 0 ? counts : "none")}. Findings: {Count(result, Severity.Error)} errors, {Count(result, Severity.Warning)} warnings, {Count(result, Severity.Note)} notes.");
+        Changes(output, result, units);
         output.WriteLine(GeoCulvert.Report.ReportCaution.Short);
     }
+
+    /// <summary>What differs from the run before, one line each.</summary>
+    private static void Changes(TextWriter output, StudyResult result, UnitSystem units)
+    {
+        if (result.Openings.Count > 0) output.WriteLine($"{result.Openings.Count} embankment openings, see layer openings.");
+        if (result.Changes.Count == 0) return;
+        output.WriteLine("Since the run before:");
+        foreach (var change in result.Changes.Take(MostRows))
+            output.WriteLine($"  {Fit(change.CrossingId, IdWidth)} {change.Change}{(change.MovedM is > 0 ? $" ({change.MovedM:0.0} m)" : "")}: {Was(change.Before, units)} -> {Was(change.After, units)}");
+        if (result.Changes.Count > MostRows) output.WriteLine($"  ... and {result.Changes.Count - MostRows} more in layer changes");
+    }
+
+    private static string Was(FormerCrossing? crossing, UnitSystem units) => crossing is null ? "none"
+        : $"{(crossing.DesignFlowM3PerS is { } q ? $"{Significant(DisplayUnits.FromSi(q, QuantityKind.Flow, units))} {DisplayUnits.Symbol(QuantityKind.Flow, units)}" : "no flow")}, {crossing.Culvert ?? "no culvert"}";
 
     private static int Count(StudyResult result, Severity severity) => result.Findings.Count(f => f.Severity == severity);
 

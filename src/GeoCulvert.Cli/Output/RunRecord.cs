@@ -49,6 +49,7 @@ internal static class RunRecord
         json.WriteNumber("peak_memory_bytes", Process.GetCurrentProcess().PeakWorkingSet64);
         Counts(json, "crossings", result.Crossings.Select(c => c.Status));
         Counts(json, "findings", report.Findings.Select(f => f.Code));
+        FormerRun.Write(json, result.Crossings);
         json.WriteEndObject();
     }
 

@@ -33,6 +33,15 @@ internal static class ProjectKeys
         Length("terrain", "cell_size", null, "cell size after a geographic terrain model is projected; default: its own spacing", 0.01),
         new("terrain", "stream_area", KeyKind.Quantity, "\"10 ha\"", "drainage area at which a stream begins") { Dimension = "area", Least = 1 },
 
+        new("terrain", "openings", KeyKind.Choice, "\"search\"", "where embankments that dam the terrain model are opened: by search along the roads, at known culverts and given crossings only, or nowhere") { Words = ["search", "known", "none"] },
+        new("terrain", "culverts", KeyKind.Path, null, "lines of culverts known to be there; embankments are opened along them"),
+        new("terrain", "culverts_layer", KeyKind.Text, null, "layer in the file; default: its first"),
+        new("terrain", "culverts_where", KeyKind.Text, null, "filter on the fields"),
+        new("terrain", "culverts_id", KeyKind.Text, null, "field that holds their names; default: numbered in the order of the file"),
+        Length("terrain", "opening_length", "\"80 m\"", "longest opening of an embankment (own rule)", 1),
+        Length("terrain", "opening_depth", "\"12 m\"", "deepest opening below the terrain model (own rule)", 0.1),
+        Length("terrain", "opening_pond", "\"0.3 m\"", "smallest depth of water behind an embankment that counts as dammed (own rule)", 0.01),
+
         new("road", "file", KeyKind.Path, null, "alignment, in any vector format"),
         new("road", "layer", KeyKind.Text, null, "layer in the file; default: its first"),
         new("road", "where", KeyKind.Text, null, "filter on the fields, as an SQL WHERE clause"),
@@ -51,6 +60,8 @@ internal static class ProjectKeys
         new("crossings", "where", KeyKind.Text, null, "filter on the fields"),
         new("crossings", "id", KeyKind.Text, null, "field that holds the crossing id; default: numbered in the order of the file"),
         Length("crossings", "snap", null, "how far a given point may be moved to its stream; default: the larger of 60 m and five cells", 0),
+        new("crossings", "cross_drain_area", KeyKind.Quantity, "\"1 ha\"", "drainage area from which water let through an embankment, or met at a low point of the road, is a crossing though it is no stream yet (own rule)") { Dimension = "area", Least = 1 },
+        Length("crossings", "together", "\"30 m\"", "roads whose shoulders follow each other within this distance along the stream have one culvert under all (own rule)", 0),
         new("crossings", "overrides", KeyKind.Path, null, "table keyed by crossing_id that sets values of single crossings"),
         new("crossings", "accept_edge_contact", KeyKind.Number, "0.0", "largest share of a watershed's boundary on the edge of the terrain for which a size is still issued") { Least = 0, Most = 1 },
 

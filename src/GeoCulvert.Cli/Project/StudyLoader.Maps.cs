@@ -145,6 +145,25 @@ internal sealed partial class StudyLoader
         });
     }
 
+    private List<KnownCulvert>? KnownCulverts(WorkingPlane plane)
+    {
+        var table = _project["terrain"];
+        NameFile("terrain", "culverts", "culvert lines");
+        if (_project.PathOf(table, "culverts") is not { } path || (!File.Exists(path) && !path.StartsWith("/vsi", StringComparison.Ordinal))) return null;
+        return Try(() =>
+        {
+            var layer = VectorSource.Read(path, table.Text("culverts_layer"), table.Text("culverts_where"), plane);
+            _files.Add(InputFacts.Of(table.Text("culverts")!, path, "known culverts", layer.Crs));
+            _findings.AddRange(layer.Findings);
+            var field = table.Text("culverts_id");
+            if (field is not null && !layer.FieldNames.Contains(field, StringComparer.OrdinalIgnoreCase))
+                throw new InputException(_project.Place(table, "culverts_id"), $"'{field}'", $"one of the fields {string.Join(", ", layer.FieldNames)}");
+            var lines = layer.Features.SelectMany(f => Lines(f.Geometry).Where(l => l.Length > 0).Select(l => (f, l))).ToList();
+            if (lines.Count == 0) throw new InputException(_project.Place(table, "culverts"), $"no line in layer {layer.LayerName}", "a layer of lines, one for each culvert");
+            return lines.Select((p, i) => new KnownCulvert(field is null ? $"{i + 1}" : p.f.Text(field) ?? $"{i + 1}", p.l.StartPoint.Coordinate, p.l.EndPoint.Coordinate)).ToList();
+        });
+    }
+
     private Grid<int>? Classes(string key, GridFrame? frame, WorkingPlane? plane, bool checkOnly)
     {
         var table = _project["cover"];

@@ -1,4 +1,5 @@
 using GeoCulvert.Design.Basis;
+using GeoCulvert.Design.Crossings;
 using GeoCulvert.Design.Hydraulics;
 using GeoCulvert.Design.Hydrology;
 using GeoCulvert.Design.Sizing;
@@ -116,6 +117,15 @@ internal sealed partial class StudyLoader
         {
             Units = _project["study"].Text("units") == "us" ? UnitSystem.Us : UnitSystem.Si,
             StreamAreaM2 = _project["terrain"].Needed("stream_area"),
+            CrossDrainAreaM2 = _project["crossings"].Needed("cross_drain_area"),
+            RoadsTogetherM = _project["crossings"].Needed("together"),
+            Openings = new OpeningSettings
+            {
+                Scope = _project["terrain"].Text("openings") switch { "known" => OpeningScope.Known, "none" => OpeningScope.None, _ => OpeningScope.Search },
+                LongestM = _project["terrain"].Needed("opening_length"),
+                DeepestM = _project["terrain"].Needed("opening_depth"),
+                SmallestPondM = _project["terrain"].Needed("opening_pond"),
+            },
             SnapM = _project["crossings"].Number("snap"),
             AcceptedEdgeContactShare = _project["crossings"].Needed("accept_edge_contact"),
             Flow = flow,

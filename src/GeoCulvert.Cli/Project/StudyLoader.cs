@@ -57,6 +57,7 @@ internal sealed partial class StudyLoader
         var (elevation, plane, _) = Terrain(checkOnly);
         var roads = plane is null ? NameRoadFiles() : Roads(plane, elevation?.Elevation.Frame);
         var points = plane is null ? NameFile("crossings", "points", "crossings") : Points(plane);
+        var culverts = plane is null ? null : KnownCulverts(plane);
         var flow = Flow();
         var catalogue = Catalogue();
         var overrides = Try(() => TextFile("crossings", "overrides", "overrides") is { } t ? Overrides.Read(t.Name, t.Text) : Overrides.None) ?? Overrides.None;
@@ -74,6 +75,7 @@ internal sealed partial class StudyLoader
             Elevation = elevation!.Elevation,
             Roads = roads,
             Points = points,
+            KnownCulverts = culverts ?? [],
             LandCover = landCover,
             SoilGroup = soilGroup,
             Coefficients = coefficients!,

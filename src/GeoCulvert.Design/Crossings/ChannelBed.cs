@@ -17,8 +17,8 @@ internal sealed class ChannelBed
     public ChannelBed(Crossing crossing, Grid<byte> direction, Grid<int> accumulation, Grid<float> elevation, double windowM, double reachM)
     {
         _windowM = windowM;
-        _up = Along(FlowSteps.UpstreamPath(direction, accumulation, crossing.OutletCell, reachM), crossing, elevation);
-        var next = FlowSteps.Downstream(direction, crossing.OutletCell);
+        _up = Along(FlowSteps.UpstreamPath(direction, accumulation, crossing.MeetingCell, reachM), crossing, elevation);
+        var next = FlowSteps.Downstream(direction, crossing.MeetingCell);
         _down = next < 0 ? [] : Along(FlowSteps.DownstreamPath(direction, next, reachM), crossing, elevation);
     }
 

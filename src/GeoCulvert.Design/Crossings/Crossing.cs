@@ -11,7 +11,22 @@ public enum CrossingOrigin
 
     /// <summary>Given as a point.</summary>
     Given,
+
+    /// <summary>Found where water is let through an embankment of the terrain model, with less area than a stream.</summary>
+    Opening,
+
+    /// <summary>Found at a low point of the road, with less area than a stream: a cross-drain.</summary>
+    LowPoint,
+
+    /// <summary>Placed to relieve a long ditch.</summary>
+    DitchRelief,
 }
+
+/// <summary>A road over a culvert.</summary>
+/// <param name="Road">The road.</param>
+/// <param name="StationM">Its station, m.</param>
+/// <param name="AlongM">Distance along the flow path from the crossing's point, m; negative upstream.</param>
+public sealed record RoadOver(RoadAlignment Road, double StationM, double AlongM);
 
 /// <summary>A place where water crosses a road.</summary>
 /// <param name="Id">"RD9 12+340", or the id of the given point; unique in a run.</param>
@@ -21,6 +36,20 @@ public enum CrossingOrigin
 /// <param name="AccumulationCells">Cells drained by the outlet cell, itself included.</param>
 public sealed record Crossing(string Id, CrossingOrigin Origin, Coordinate Point, int OutletCell, long AccumulationCells)
 {
+    /// <summary>
+    /// The cell at which the watershed ends: the outlet cell, or for a braid the cell below the road where its arms join, so that no arm is lost.
+    /// </summary>
+    public int WatershedCell { get; init; } = OutletCell;
+
+    /// <summary>The cell whose step downstream meets the centreline at <see cref="Point"/>; the outlet cell lies further up where the culvert also passes under roads upstream.</summary>
+    public int MeetingCell { get; init; } = OutletCell;
+
+    /// <summary>All roads that this culvert passes under, from upstream, each with its distance along the flow path from <see cref="Point"/> (negative upstream), m.</summary>
+    public IReadOnlyList<RoadOver> Over { get; init; } = [];
+
+    /// <summary>The opening of the terrain model that the flow passes here; null where the terrain was open.</summary>
+    public EmbankmentOpening? Opening { get; init; }
+
     /// <summary>The road; null for a given point without a road in reach.</summary>
     public RoadAlignment? Road { get; init; }
 

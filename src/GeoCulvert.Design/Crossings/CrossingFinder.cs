@@ -13,11 +13,26 @@ public sealed record CrossingSearch
     /// </summary>
     public double? SameCrossingM { get; init; }
 
+    /// <summary>Roads whose shoulders follow each other within this distance along the flow path have one culvert under all, m. Default 30 (own rule).</summary>
+    public double TogetherM { get; init; } = 30;
+
     /// <summary>Skew above which a finding is raised, degrees. Default 45 (common practice).</summary>
     public double SkewLimitDeg { get; init; } = 45;
 
     /// <summary>Stations in ids: metres or feet.</summary>
     public UnitSystem Stationing { get; init; } = UnitSystem.Si;
+
+    /// <summary>Openings of embankments.</summary>
+    public IReadOnlyList<EmbankmentOpening> Openings { get; init; } = [];
+
+    /// <summary>Cells drained from which an opening or a low point of the road is a crossing though its water is no stream yet; null for streams only.</summary>
+    public long? CrossDrainCells { get; init; }
+
+    /// <summary>Low points of each road, m of station (<see cref="RoadLowPoints"/>); null for none.</summary>
+    public Func<RoadAlignment, IReadOnlyList<double>>? LowPoints { get; init; }
+
+    /// <summary>Distance along the road from a low point within which water that meets the road belongs to it, m; null for the larger of 10 m and two cells (own rule).</summary>
+    public double? LowPointReachM { get; init; }
 }
 
 /// <summary>Crossings in order of road and station, and the doubts that belong to no single one.</summary>
@@ -25,7 +40,7 @@ public sealed record CrossingList(IReadOnlyList<Crossing> Crossings, IReadOnlyLi
 
 /// <summary>
 /// Finds where roads meet streams: every step of a stream cell (from its centre to the centre of the next cell downstream) is
-/// intersected with the centrelines. One crossing per stream and road even where they braid or run along each other.
+/// intersected with the centrelines. One crossing per stream and road even where they braid or run along each other, and one where several roads follow closely.
 /// </summary>
 public static class CrossingFinder
 {
@@ -45,24 +60,16 @@ public static class CrossingFinder
         var crossings = new List<Crossing>();
         var findings = new List<Finding>();
         var ids = new HashSet<string>(StringComparer.Ordinal);
+        var opened = search.Openings.SelectMany(o => o.Cells).ToHashSet();
         foreach (var road in roads)
         {
             if (road.GapCount > 0) findings.Add(CrossingFindings.RoadGap.With($"road {road.Name} has {road.GapCount} gap(s)", road.GapCount, 0));
-            var meetings = RoadMeetings.Find(road, direction, c => accumulation.Cells[c] >= streamThresholdCells);
-            foreach (var group in MeetingGroups.Of(meetings, road, direction, accumulation, SameCrossingM(search, road, direction.Frame)))
-            {
-                var raised = new List<Finding>();
-                var last = group[^1];
-                var extentM = group.Max(m => m.StationM) - group.Min(m => m.StationM);
-                if (group.Count > 1)
-                    raised.Add(CrossingFindings.RunsAlong.With($"{group.Count} meetings within {extentM:0.#} m of road; kept the one at {StationText.Of(last.StationM, search.Stationing)}", group.Count, 1));
-                if (MeetingGroups.Returns(group, road, direction)) raised.Add(CrossingFindings.ReturnsToSide.With($"{group.Count} meetings", group.Count));
-                var id = Unique(ids, road.IdAt(last.StationM, search.Stationing));
-                crossings.Add(At(road, last, id, CrossingOrigin.Found, direction, accumulation, search, raised) with { MeetingCount = group.Count });
-            }
+            var meetings = Meetings(road, direction, accumulation, streamThresholdCells, opened, search);
+            foreach (var group in MeetingGroups.Of([.. meetings.Keys], road, direction, accumulation, SameCrossingM(search, road, direction.Frame)))
+                crossings.Add(Of(group, road, meetings[group[^1]], ids, direction, accumulation, search));
         }
 
-        return new(SharedCells(crossings), findings);
+        return new(SharedCells(RoadsTogether.Merge(crossings, roads, direction, accumulation, search.TogetherM)), findings);
     }
 
     /// <summary>The distance that decides whether a stream has left a road.</summary>
@@ -73,14 +80,57 @@ public static class CrossingFinder
         return search.SameCrossingM ?? Math.Max(3 * Math.Max(frame.CellWidthM, frame.CellHeightM), road.WidthM);
     }
 
+    /// <summary>Meetings that count, by station, with why they do.</summary>
+    private static Dictionary<RoadMeeting, CrossingOrigin> Meetings(
+        RoadAlignment road, Grid<byte> direction, Grid<int> accumulation, long streamCells, HashSet<int> opened, CrossingSearch search)
+    {
+        var least = Math.Min(streamCells, search.CrossDrainCells ?? long.MaxValue);
+        var low = search.CrossDrainCells is null ? null : search.LowPoints?.Invoke(road);
+        var reachM = search.LowPointReachM ?? Math.Max(10, 2 * Math.Max(direction.Frame.CellWidthM, direction.Frame.CellHeightM));
+        var counted = new Dictionary<RoadMeeting, CrossingOrigin>();
+        foreach (var meeting in RoadMeetings.Find(road, direction, c => accumulation.Cells[c] >= least))
+        {
+            if (accumulation.Cells[meeting.Cell] >= streamCells) counted.Add(meeting, CrossingOrigin.Found);
+            else if (opened.Contains(meeting.Cell)) counted.Add(meeting, CrossingOrigin.Opening);
+            else if (low?.Any(s => Math.Abs(s - meeting.StationM) <= reachM) == true) counted.Add(meeting, CrossingOrigin.LowPoint);
+        }
+
+        return counted;
+    }
+
+    private static Crossing Of(
+        List<RoadMeeting> group, RoadAlignment road, CrossingOrigin origin, HashSet<string> ids, Grid<byte> direction, Grid<int> accumulation, CrossingSearch search)
+    {
+        var raised = new List<Finding>();
+        var last = group[^1];
+        var extentM = group.Max(m => m.StationM) - group.Min(m => m.StationM);
+        if (group.Count > 1)
+            raised.Add(CrossingFindings.RunsAlong.With($"{group.Count} meetings within {extentM:0.#} m of road; kept the one at {StationText.Of(last.StationM, search.Stationing)}", group.Count, 1));
+        if (MeetingGroups.Returns(group, road, direction)) raised.Add(CrossingFindings.ReturnsToSide.With($"{group.Count} meetings", group.Count));
+        var id = Unique(ids, road.IdAt(last.StationM, search.Stationing));
+        var crossing = At(road, last, id, origin, direction, accumulation, search, raised) with { MeetingCount = group.Count };
+        var joined = MeetingGroups.Join(group, direction);
+        return joined < 0 || joined == crossing.OutletCell ? crossing : crossing with { WatershedCell = joined, AccumulationCells = accumulation.Cells[joined] };
+    }
+
     internal static Crossing At(
         RoadAlignment road, RoadMeeting meeting, string id, CrossingOrigin origin, Grid<byte> direction, Grid<int> accumulation, CrossingSearch search, List<Finding> raised)
     {
-        // Direction over a few cells on both sides: a single D8 step knows only multiples of 45 degrees.
-        var reachM = Math.Max(2 * Math.Max(direction.Frame.CellWidthM, direction.Frame.CellHeightM), road.WidthM / 2);
-        var up = FlowSteps.UpstreamPath(direction, accumulation, meeting.Cell, reachM);
-        var down = FlowSteps.DownstreamPath(direction, FlowSteps.Downstream(direction, meeting.Cell), reachM);
-        var flow = Bearings.AzimuthDeg(FlowSteps.Centre(direction.Frame, up[^1]), FlowSteps.Centre(direction.Frame, down[^1]));
+        var opening = search.Openings.FirstOrDefault(o => o.Cells.Contains(meeting.Cell));
+        double flow;
+        if (opening is not null)
+        {
+            flow = Bearings.AzimuthDeg(opening.Line.StartPoint.Coordinate, opening.Line.EndPoint.Coordinate);
+        }
+        else
+        {
+            // Direction over a few cells on both sides: a single D8 step knows only multiples of 45 degrees.
+            var reachM = Math.Max(2 * Math.Max(direction.Frame.CellWidthM, direction.Frame.CellHeightM), road.WidthM / 2);
+            var up = FlowSteps.UpstreamPath(direction, accumulation, meeting.Cell, reachM);
+            var down = FlowSteps.DownstreamPath(direction, FlowSteps.Downstream(direction, meeting.Cell), reachM);
+            flow = Bearings.AzimuthDeg(FlowSteps.Centre(direction.Frame, up[^1]), FlowSteps.Centre(direction.Frame, down[^1]));
+        }
+
         var skew = Bearings.SkewDeg(flow, road.AzimuthAt(meeting.StationM));
         if (skew > search.SkewLimitDeg) raised.Add(CrossingFindings.Skewed.With($"skew {skew:0} deg", skew, search.SkewLimitDeg));
         return new(id, origin, meeting.Point, meeting.Cell, accumulation.Cells[meeting.Cell])
@@ -90,6 +140,8 @@ public static class CrossingFinder
             FlowAzimuthDeg = flow,
             SkewDeg = skew,
             MeetsRoad = true,
+            Opening = opening,
+            Over = [new(road, meeting.StationM, 0)],
             Findings = [.. raised.Select(f => f.At(id))],
         };
     }

@@ -45,16 +45,25 @@ public static class CulvertLineSurvey
         var (level, lowest, profile) = road is null
             ? (Figure.Of(overrides.RoadElevationM, double.NaN, ""), new ProfilePoint(double.NaN, double.NaN), null)
             : RoadLevel(road, crossing.StationM!.Value, elevation, overrides, settings, cellM, findings);
+        var (upper, lower) = (EndRoad.Of(crossing, true, level), EndRoad.Of(crossing, false, level));
+        foreach (var over in crossing.Over.Where(o => !ReferenceEquals(o.Road, road)))
+        {
+            var (otherLevel, otherLowest, _) = RoadLevel(over.Road, over.StationM, elevation, overrides, settings, cellM, findings);
+            if (ReferenceEquals(over, crossing.Over[0])) upper = upper with { Level = otherLevel ?? level };
+            if (ReferenceEquals(over, crossing.Over[^1])) lower = lower with { Level = otherLevel ?? level };
+            if (otherLowest.ElevationM < lowest.ElevationM) lowest = new(double.NaN, otherLowest.ElevationM);
+        }
+
         if (level is null) findings.Add(CrossingFindings.RoadLevelUnknown.With(road is null ? "no road at this crossing" : $"station {StationText.Of(crossing.StationM!.Value)}"));
 
         var skew = Skew(crossing, overrides, settings, findings);
-        var farM = (road is null ? 0 : (road.WidthM / 2) + (road.SideSlope * 60)) / Math.Cos(Math.Min(skew ?? 0, 80) * Math.PI / 180);
+        var farM = (road is null ? 0 : Math.Max(upper.AwayM, lower.AwayM) + (road.WidthM / 2) + (road.SideSlope * 60)) / Math.Cos(Math.Min(skew ?? 0, 80) * Math.PI / 180);
         var bed = new ChannelBed(crossing, direction, accumulation, elevation, windowM, windowM + Math.Max(farM, overrides.LengthM ?? 0));
         double up = double.NaN, down = double.NaN;
         if (road is not null && level is not null)
         {
-            up = ReachM(road, level.Value, skew ?? 0, bed.AtCrossingM, overrides.InletElevationM, bed.UpstreamM);
-            down = ReachM(road, level.Value, skew ?? 0, bed.AtCrossingM, overrides.OutletElevationM, bed.DownstreamM);
+            up = upper.AwayM + ReachM(upper.Road!, upper.Level!.Value, skew ?? 0, bed.AtCrossingM, overrides.InletElevationM, r => bed.UpstreamM(upper.AwayM + r));
+            down = lower.AwayM + ReachM(lower.Road!, lower.Level!.Value, skew ?? 0, bed.AtCrossingM, overrides.OutletElevationM, r => bed.DownstreamM(lower.AwayM + r));
         }
 
         if (overrides.LengthM is { } given)
@@ -69,7 +78,7 @@ public static class CulvertLineSurvey
         if (inlet is null || outlet is null) findings.Add(CrossingFindings.BedUnknown.With(inlet is null ? "at the inlet" : "at the outlet"));
         var line = new CulvertLine(crossing.Id)
         {
-            Length = Figure.Of(overrides.LengthM, up + down, road is null ? "" : $"({road.WidthM:0.##} m wide, side slopes {road.SideSlope:0.##} to 1, skew {skew ?? 0:0} deg)"),
+            Length = Figure.Of(overrides.LengthM, up + down, LengthText(crossing, skew ?? 0)),
             InletElevation = inlet,
             OutletElevation = outlet,
             RoadElevation = level,
@@ -86,6 +95,21 @@ public static class CulvertLineSurvey
         Filled(crossing, filledDepthM, settings, findings);
         return line with { Findings = [.. findings.Select(f => f.At(crossing.Id))] };
     }
+
+    /// <summary>The outermost road on one side and its distance from the crossing's point.</summary>
+    private sealed record EndRoad(RoadAlignment? Road, double AwayM, Figure? Level)
+    {
+        public static EndRoad Of(Crossing crossing, bool upstream, Figure? level)
+        {
+            if (crossing.Over.Count < 2) return new(crossing.Road, 0, level);
+            var over = upstream ? crossing.Over[0] : crossing.Over[^1];
+            return new(over.Road, ReferenceEquals(over.Road, crossing.Road) ? 0 : crossing.Point.Distance(over.Road.PointAt(over.StationM)), level);
+        }
+    }
+
+    private static string LengthText(Crossing crossing, double skewDeg) => crossing.Road is not { } road ? "" : crossing.Over.Count > 1
+        ? $"(under {string.Join(", ", crossing.Over.Select(o => o.Road.Name))}; skew {skewDeg:0} deg)"
+        : $"({road.WidthM:0.##} m wide, side slopes {road.SideSlope:0.##} to 1, skew {skewDeg:0} deg)";
 
     /// <summary>
     /// Road level at the crossing and lowest level near it. From the terrain the level at the crossing is the highest within one and a half cells or half the

@@ -131,13 +131,28 @@ internal sealed class DamSearch(IReadOnlyList<RoadAlignment> roads, RoadBand ban
         }
 
         if (path.Count < 2) return null;
-        var nearest = path.Min(p => Math.Abs(p.Place.OffsetM)) + Math.Max(frame.CellWidthM, frame.CellHeightM);
-        var turn = path.First(p => Math.Abs(p.Place.OffsetM) <= nearest);
+        var turn = path[Turn(path, Math.Max(frame.CellWidthM, frame.CellHeightM), frame)];
         var alongM = Math.Abs(path[^1].Place.StationM - turn.Place.StationM);
         if (alongM < turnedM) return null; // crosses here, or only passes by
         var come = FlowSteps.UpstreamPath(solved.Direction, solved.Accumulation, turn.Cell, Math.Max(20, 5 * frame.CellWidthM))[^1];
         var skew = Bearings.SkewDeg(Bearings.AzimuthDeg(FlowSteps.Centre(frame, come), FlowSteps.Centre(frame, turn.Cell)), road.AzimuthAt(turn.Place.StationM));
         if (skew > MostObliqueDeg || IsLevel(elevation, turn.Cell)) return null;
         return new(turn.Cell, turn.Place, OpeningReason.Diversion, 0, solved.Accumulation.Cells[turn.Cell] * frame.CellAreaM2, false);
+    }
+
+    /// <summary>The first cell of a path, not far from where it is nearest to the road, from which it comes less than half as fast nearer as it goes on.</summary>
+    private static int Turn(List<(int Cell, BandCell Place)> path, double cellM, GridFrame frame)
+    {
+        const int Ahead = 5;
+        var near = path.Min(p => Math.Abs(p.Place.OffsetM)) + (Ahead * cellM);
+        for (var i = 0; i + 1 < path.Count; i++)
+        {
+            if (Math.Abs(path[i].Place.OffsetM) > near) continue;
+            var j = Math.Min(i + Ahead, path.Count - 1);
+            var wentM = FlowSteps.Centre(frame, path[i].Cell).Distance(FlowSteps.Centre(frame, path[j].Cell));
+            if (Math.Abs(path[i].Place.OffsetM) - Math.Abs(path[j].Place.OffsetM) < wentM / 2) return i;
+        }
+
+        return path.Count - 1;
     }
 }

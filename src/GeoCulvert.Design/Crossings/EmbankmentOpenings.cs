@@ -53,7 +53,12 @@ public static class EmbankmentOpenings
             {
                 cancel.ThrowIfCancellationRequested();
                 if (settings.Scope == OpeningScope.Search) work.OpenDams(solved, round);
-                if (!work.TakeNew()) break;
+                if (!work.TakeNew())
+                {
+                    if (settings.Scope == OpeningScope.Known) work.SayDams(solved);
+                    break;
+                }
+
                 solved = solve(elevation, work.Paths);
                 unfinished = round + 1 >= settings.MostRounds;
                 if (unfinished) break;
@@ -120,7 +125,7 @@ public static class EmbankmentOpenings
             var cellM = Math.Max(elevation.Frame.CellWidthM, elevation.Frame.CellHeightM);
             // The toe of the highest embankment that may be opened, and a few cells of ditch beyond.
             _band = new(roads, elevation.Frame, r => (r.WidthM / 2) + Math.Min(r.SideSlope * settings.DeepestM, settings.LongestM / 2) + (3 * cellM));
-            _path = new(roads, settings);
+            _path = new(new RoadIndex(roads), settings);
             _search = new(roads, _band, settings);
         }
 
@@ -188,10 +193,21 @@ public static class EmbankmentOpenings
                 }
 
                 _refused.Add(dam.Cell);
-                if (dam.Reason == OpeningReason.Ponding && dam.AreaM2 >= _settings.StreamAreaM2)
-                    Findings.Add(OpeningFindings.NotOpened.With(
-                        $"{_roads[dam.Place.Road].IdAt(dam.Place.StationM)}: {dam.AreaM2 / 1e4:0.#} ha, {dam.PondDepthM:0.0} m deep; {reason}", dam.PondDepthM));
+                SayShut(dam, reason);
             }
+        }
+
+        /// <summary>Says which dams stay shut where only known culverts are opened.</summary>
+        public void SayDams(DrainedTerrain solved)
+        {
+            foreach (var dam in _search.Find(_elevation, solved).Where(d => !IsOpenedNear(d.Cell))) SayShut(dam, "only known culverts and given crossings are opened");
+        }
+
+        private void SayShut(Dam dam, string reason)
+        {
+            if (dam.Reason == OpeningReason.Ponding && dam.AreaM2 >= _settings.StreamAreaM2)
+                Findings.Add(OpeningFindings.NotOpened.With(
+                    $"{_roads[dam.Place.Road].IdAt(dam.Place.StationM)}: {dam.AreaM2 / 1e4:0.#} ha, {dam.PondDepthM:0.0} m deep; {reason}", dam.PondDepthM));
         }
 
         private void Open(OpeningPath.Way way, OpeningReason reason, string? knownId, DrainedTerrain solved, bool isLake)

@@ -27,6 +27,7 @@ public static class GivenCrossings
         ArgumentNullException.ThrowIfNull(direction);
         ArgumentNullException.ThrowIfNull(accumulation);
         search ??= new();
+        var index = new RoadIndex(roads);
         var ids = new HashSet<string>(StringComparer.Ordinal);
         var crossings = new List<Crossing>();
         var findings = new List<Finding>();
@@ -34,7 +35,7 @@ public static class GivenCrossings
         {
             var id = CrossingFinder.Unique(ids, point.Given.Id);
             if (point.Cell < 0) findings.AddRange(point.Findings);
-            else crossings.Add(Place(point, id, roads, direction, accumulation, roadReachM, search));
+            else crossings.Add(RoadsTogether.Whole(Place(point, id, roads, direction, accumulation, roadReachM, search), index, direction, accumulation, search.TogetherM));
         }
 
         return new(CrossingFinder.SharedCells(crossings), findings);

@@ -42,6 +42,28 @@ internal static class MeetingGroups
             .OrderBy(g => g[^1].StationM).ThenBy(g => g[^1].Cell)];
     }
 
+    /// <summary>
+    /// The first cell that the water of all meetings of a group passes below its last: where the arms of a braid join; the last meeting's own cell where its path already
+    /// passes all others; -1 where they never join.
+    /// </summary>
+    public static int Join(IReadOnlyList<RoadMeeting> group, Grid<byte> direction)
+    {
+        var joined = group[^1].Cell;
+        foreach (var other in group.SkipLast(1))
+        {
+            // Down the main path from where the arms known so far are together, until the other arm's water is met.
+            var path = new HashSet<int>();
+            for (var cell = other.Cell; cell >= 0 && path.Add(cell); cell = FlowSteps.Downstream(direction, cell))
+            {
+            }
+
+            while (joined >= 0 && !path.Contains(joined)) joined = FlowSteps.Downstream(direction, joined);
+            if (joined < 0) return -1;
+        }
+
+        return joined;
+    }
+
     /// <summary>Whether the main path of a group leaves the road on the side it came from: an even number of real crossings.</summary>
     public static bool Returns(IReadOnlyList<RoadMeeting> group, RoadAlignment road, Grid<byte> direction)
     {

@@ -1,16 +1,7 @@
 using GeoCulvert.Design.Terrain;
-using NetTopologySuite.Algorithm;
 using NetTopologySuite.Geometries;
-using NetTopologySuite.Index.Strtree;
 
 namespace GeoCulvert.Design.Crossings;
-
-/// <summary>Where a line meets a centreline.</summary>
-/// <param name="Road">Index of the road.</param>
-/// <param name="StationM">Station, m.</param>
-/// <param name="AlongM">Distance from the beginning of the line, m.</param>
-/// <param name="AzimuthDeg">Direction of the road there.</param>
-internal readonly record struct CentrelineMeeting(int Road, double StationM, double AlongM, double AzimuthDeg);
 
 /// <summary>
 /// The way through an embankment from a cell where water is stopped: of the straight lines to lower ground beyond the road the shortest, L0; of those not longer than
@@ -22,16 +13,10 @@ internal sealed class OpeningPath
     private const double SlackCells = 3;
     private const double EquallySteep = 0.98;
     private readonly IReadOnlyList<RoadAlignment> _roads;
+    private readonly RoadIndex _index;
     private readonly OpeningSettings _settings;
-    private readonly STRtree<(int Road, RoadSegment Segment)> _segments = new();
 
-    public OpeningPath(IReadOnlyList<RoadAlignment> roads, OpeningSettings settings)
-    {
-        (_roads, _settings) = (roads, settings);
-        for (var k = 0; k < roads.Count; k++)
-            foreach (var s in roads[k].Segments()) _segments.Insert(new Envelope(s.From, s.To), (k, s));
-        _segments.Build();
-    }
+    public OpeningPath(RoadIndex index, OpeningSettings settings) => (_index, _roads, _settings) = (index, index.Roads, settings);
 
     /// <summary>A way found.</summary>
     /// <param name="Cells">Cells, upstream end first.</param>
@@ -51,7 +36,7 @@ internal sealed class OpeningPath
         if (away == 0) return false;
         var reach = _settings.TogetherM + 50;
         var beyond = new Coordinate(here.X + ((here.X - foot.X) / away * reach), here.Y + ((here.Y - foot.Y) / away * reach));
-        return Meetings(here, beyond).Any(m => m.AlongM - (_roads[m.Road].WidthM / 2) <= _settings.TogetherM);
+        return _index.Meetings(here, beyond).Any(m => m.AlongM - (_roads[m.Road].WidthM / 2) <= _settings.TogetherM);
     }
 
     /// <summary>The best way from a cell; null with the reason when there is none.</summary>
@@ -68,7 +53,7 @@ internal sealed class OpeningPath
     /// <summary>The straight way between two cells, whatever is between; null over nodata or without a road over it.</summary>
     public Way? Between(Grid<float> elevation, int from, int to)
     {
-        var meetings = Meetings(FlowSteps.Centre(elevation.Frame, from), FlowSteps.Centre(elevation.Frame, to));
+        var meetings = _index.Meetings(FlowSteps.Centre(elevation.Frame, from), FlowSteps.Centre(elevation.Frame, to));
         return meetings.Count == 0 ? null : Carve(elevation, from, to, meetings);
     }
 
@@ -79,7 +64,7 @@ internal sealed class OpeningPath
         var reach = _settings.LongestM;
         int top = Math.Max(frame.RowAt(here.Y + reach), 0), bottom = Math.Min(frame.RowAt(here.Y - reach), frame.Rows - 1);
         int left = Math.Max(frame.ColumnAt(here.X - reach), 0), right = Math.Min(frame.ColumnAt(here.X + reach), frame.Columns - 1);
-        var near = Near(here, reach + _settings.TogetherM + 50);
+        var near = _index.Near(here, reach + _settings.TogetherM + 50);
         var found = new List<Target>();
         for (var row = top; row <= bottom; row++)
             for (var column = left; column <= right; column++)
@@ -90,11 +75,11 @@ internal sealed class OpeningPath
                 var length = here.Distance(there);
                 if (length > reach) continue;
                 if (band.TryGet(cell, out var place) && Math.Abs(place.OffsetM) <= _roads[place.Road].WidthM / 2) continue;
-                var meetings = Meetings(here, there, near);
+                var meetings = RoadIndex.Meetings(here, there, near);
                 if (meetings.Count == 0 || meetings.GroupBy(m => m.Road).Any(g => g.Count() % 2 == 0)) continue;
                 var far = _settings.TogetherM + 50;
                 var beyond = new Coordinate(there.X + ((there.X - here.X) / length * far), there.Y + ((there.Y - here.Y) / length * far));
-                var between = Meetings(there, beyond, near).Any(m => m.AlongM - (_roads[m.Road].WidthM / 2) <= _settings.TogetherM);
+                var between = RoadIndex.Meetings(there, beyond, near).Any(m => m.AlongM - (_roads[m.Road].WidthM / 2) <= _settings.TogetherM);
                 found.Add(new(cell, from, length, meetings, between));
             }
 
@@ -166,32 +151,6 @@ internal sealed class OpeningPath
         }
 
         return [.. cells];
-    }
-
-    private IList<(int Road, RoadSegment Segment)> Near(Coordinate p, double reach) => _segments.Query(new Envelope(p.X - reach, p.X + reach, p.Y - reach, p.Y + reach));
-
-    private List<CentrelineMeeting> Meetings(Coordinate a, Coordinate b) => Meetings(a, b, _segments.Query(new Envelope(a, b)));
-
-    private static List<CentrelineMeeting> Meetings(Coordinate a, Coordinate b, IList<(int Road, RoadSegment Segment)> segments)
-    {
-        var found = new List<CentrelineMeeting>();
-        var length = a.Distance(b);
-        foreach (var (road, s) in segments)
-        {
-            // The half-open rule: a vertex on the line belongs to one of its two segments.
-            var from = Orientation.Index(a, b, s.From) == OrientationIndex.Left;
-            var to = Orientation.Index(a, b, s.To) == OrientationIndex.Left;
-            if (from == to || Orientation.Index(s.From, s.To, a) == Orientation.Index(s.From, s.To, b)) continue;
-            double sx = s.To.X - s.From.X, sy = s.To.Y - s.From.Y, rx = b.X - a.X, ry = b.Y - a.Y;
-            var cross = (rx * sy) - (ry * sx);
-            if (cross == 0) continue;
-            double t = (((s.From.X - a.X) * sy) - ((s.From.Y - a.Y) * sx)) / cross, u = (((s.From.X - a.X) * ry) - ((s.From.Y - a.Y) * rx)) / cross;
-            if (t is < 0 or > 1) continue;
-            found.Add(new(road, s.StationAt(Math.Clamp(u, 0, 1)), t * length, s.AzimuthDeg));
-        }
-
-        found.Sort((x, y) => x.AlongM != y.AlongM ? x.AlongM.CompareTo(y.AlongM) : x.Road.CompareTo(y.Road));
-        return found;
     }
 
     private readonly record struct Target(int Cell, int From, double LengthM, IReadOnlyList<CentrelineMeeting> Meetings, bool Between);

@@ -30,6 +30,9 @@ public static class CrossingAssembly
             CrossingId = crossing.Id,
             Road = crossing.Road?.Name ?? "",
             StationM = crossing.StationM,
+            IsGiven = crossing.Origin == CrossingOrigin.Given,
+            FoundBy = FoundBy(crossing.Origin),
+            AlsoUnder = string.Join(", ", crossing.Over.Select(o => o.Road.Name).Where(n => n != crossing.Road?.Name).Distinct()),
             Location = new Point(crossing.Point.X, crossing.Point.Y),
             Status = culvert.Status,
             DesignReturnPeriodYr = flow.Design.ReturnPeriodYr,
@@ -45,6 +48,15 @@ public static class CrossingAssembly
             Findings = findings,
         };
     }
+
+    private static string FoundBy(CrossingOrigin origin) => origin switch
+    {
+        CrossingOrigin.Given => "given point",
+        CrossingOrigin.Opening => "opened embankment",
+        CrossingOrigin.LowPoint => "low point of the road",
+        CrossingOrigin.DitchRelief => "ditch relief",
+        _ => "stream",
+    };
 
     private static WatershedResult Land(Watershed watershed, string? downstreamId)
     {

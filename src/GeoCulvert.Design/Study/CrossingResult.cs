@@ -140,6 +140,15 @@ public sealed record CrossingResult
     /// <summary>Station along the road, m; null without a road.</summary>
     public double? StationM { get; init; }
 
+    /// <summary>Whether it was given as a point.</summary>
+    public bool IsGiven { get; init; }
+
+    /// <summary>How it was found: stream, given point, opened embankment, low point of the road, ditch relief.</summary>
+    public string FoundBy { get; init; } = "";
+
+    /// <summary>Other roads over the same culvert; empty for none.</summary>
+    public string AlsoUnder { get; init; } = "";
+
     /// <summary>Where it is.</summary>
     public required Point Location { get; init; }
 

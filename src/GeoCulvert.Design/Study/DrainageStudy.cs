@@ -21,13 +21,15 @@ public static class DrainageStudy
         ArgumentNullException.ThrowIfNull(stages);
         var frame = inputs.Elevation.Frame;
 
-        // Make water leave: depressions filled, flats drained, directions and accumulation.
-        var terrain = stages.Run("terrain", frame.Count, p => Drainage.Solve(inputs.Elevation, null, p, cancel));
+        // Make water leave: embankments opened, depressions filled, flats drained, directions and accumulation.
+        var opened = stages.Run("terrain", frame.Count, p => CrossingStage.Drain(inputs, settings, p, cancel));
+        var terrain = opened.Terrain;
         cancel.ThrowIfCancellationRequested();
 
-        // Where water crosses the road: found along it, or given and moved to the stream.
+        // Where water crosses the road: found along it, or given and moved to the stream; ids stay those of the run before.
         var streamCells = Math.Max(1, (long)Math.Ceiling(settings.StreamAreaM2 / frame.CellAreaM2));
-        var found = stages.Run("crossings", null, _ => FindCrossings(inputs, settings, terrain, streamCells));
+        var found = stages.Run("crossings", null, _ => CrossingIdentity.Keep(CrossingStage.Find(inputs, settings, opened, streamCells), inputs.Former));
+        var openings = CrossingStage.Results(opened, found.Crossings);
 
         // The land above every crossing, all in one pass.
         var watersheds = stages.Run("watersheds", frame.Count, _ => WatershedSurvey.Survey(terrain, found.Crossings));
@@ -41,19 +43,12 @@ public static class DrainageStudy
             .Select(s => new StreamResult(new LineString([.. s.Cells.Select(c => Centre(frame, c))]), s.LowerAccumulationCells * frame.CellAreaM2, s.Order));
         var roads = inputs.Roads.Select(r => new RoadResult(r.Alignment.Name, r.Class.Name, r.Alignment.Line, r.Alignment.WidthM, r.Alignment.Surface));
         var whole = terrain.Findings.Concat(found.Findings).Concat(RunFindings(inputs, found.Crossings));
-        return new StudyResult(terrain, crossings, [.. streams], [.. roads], [.. whole.Concat(crossings.SelectMany(c => c.Findings))]);
-    }
-
-    private static CrossingList FindCrossings(StudyInputs inputs, StudySettings settings, DrainedTerrain terrain, long streamCells)
-    {
-        var roads = inputs.Roads.Select(r => r.Alignment).ToArray();
-        var search = new CrossingSearch { Stationing = settings.Units };
-        if (inputs.Points is null) return CrossingFinder.Find(roads, terrain.Direction, terrain.Accumulation, streamCells, search);
-        var frame = inputs.Elevation.Frame;
-        var snapM = settings.SnapM ?? Math.Max(60, 5 * Math.Max(frame.CellWidthM, frame.CellHeightM));
-        var snapped = PointSnapping.Snap(
-            inputs.Points, terrain.Direction, terrain.Accumulation, new SnapSettings { SnapM = snapM, StreamThresholdCells = streamCells });
-        return GivenCrossings.Place(snapped, roads, terrain.Direction, terrain.Accumulation, snapM, search);
+        return new StudyResult(terrain, crossings, [.. streams], [.. roads], [.. whole.Concat(crossings.SelectMany(c => c.Findings))])
+        {
+            Openings = openings,
+            Untouched = CrossingStage.Untouched(opened, openings),
+            Changes = CrossingIdentity.Changes(inputs.Former, crossings),
+        };
     }
 
     private static List<CrossingResult> Compute(
@@ -107,7 +102,7 @@ public static class DrainageStudy
     private static Grid<float> FilledDepth(DrainedTerrain terrain)
     {
         var depth = new Grid<float>(terrain.Elevation.Frame);
-        for (var i = 0; i < depth.Cells.Length; i++) depth.Cells[i] = terrain.Filled.Surface.Cells[i] - terrain.Elevation.Cells[i];
+        for (var i = 0; i < depth.Cells.Length; i++) depth.Cells[i] = Math.Max(0, terrain.Filled.Surface.Cells[i] - terrain.Elevation.Cells[i]);
         return depth;
     }
 

@@ -27,6 +27,8 @@ public static class ResultLayers
             Id<CrossingResult>(c => c.CrossingId),
             Text<CrossingResult>("road", "Road", "Name of the road; empty for a given point without a road.", c => c.Road),
             Real<CrossingResult>("station", QuantityKind.Length, "Station", "Distance along the road from its first point.", c => c.StationM),
+            Text<CrossingResult>("also_under", "Also under", "Other roads over the same culvert.", c => c.AlsoUnder),
+            Text<CrossingResult>("found_by", "Found by", "stream, given point, opened embankment, low point of the road or ditch relief.", c => c.FoundBy),
             Text<CrossingResult>("status", "Status", "sized, rated, no size fits or not computed.", c => c.Status),
             Real<CrossingResult>("watershed_area", QuantityKind.Area, "Drainage area", "Area of the total watershed, cells times cell area.", c => c.Watershed.AreaM2),
             Real<CrossingResult>("edge_contact_share", QuantityKind.Share, "Edge contact", "Share of the watershed's boundary on the edge of the terrain or on nodata; the area is understated when it is not 0.", c => c.Watershed.EdgeContactShare),
@@ -190,10 +192,10 @@ public static class ResultLayers
 
     private static LayerColumn<T> Id<T>(Func<T, string> value) => Text("crossing_id", "Crossing", "Id of the crossing.", value);
 
-    private static LayerColumn<T> Text<T>(string name, string title, string description, Func<T, string?> value) =>
+    internal static LayerColumn<T> Text<T>(string name, string title, string description, Func<T, string?> value) =>
         new(name, QuantityKind.None, FieldType.Text, title, description, value);
 
-    private static LayerColumn<T> Real<T>(string name, QuantityKind kind, string title, string description, Func<T, double?> value) =>
+    internal static LayerColumn<T> Real<T>(string name, QuantityKind kind, string title, string description, Func<T, double?> value) =>
         new(name, kind, FieldType.Real, title, description, r => value(r));
 
     private static LayerColumn<T> Whole<T>(string name, string title, string description, Func<T, int?> value) =>

@@ -25,6 +25,12 @@ public sealed record StudyInputs
     /// <summary>Given crossings, or null to find them along the roads.</summary>
     public IReadOnlyList<GivenPoint>? Points { get; init; }
 
+    /// <summary>Culverts known to be there; embankments are opened along them.</summary>
+    public IReadOnlyList<KnownCulvert> KnownCulverts { get; init; } = [];
+
+    /// <summary>Crossings of the run before, whose ids are kept; empty for a first run.</summary>
+    public IReadOnlyList<FormerCrossing> Former { get; init; } = [];
+
     /// <summary>Land-cover codes on the terrain's grid, or null.</summary>
     public Grid<int>? LandCover { get; init; }
 
@@ -65,6 +71,15 @@ public sealed record StudySettings
 
     /// <summary>Drainage area at which a stream begins, m2.</summary>
     public double StreamAreaM2 { get; init; } = 1e5;
+
+    /// <summary>Drainage area from which water let through an embankment, or met at a low point of the road, is a crossing, m2.</summary>
+    public double CrossDrainAreaM2 { get; init; } = 1e4;
+
+    /// <summary>Roads whose shoulders follow each other within this distance have one culvert under all, m.</summary>
+    public double RoadsTogetherM { get; init; } = 30;
+
+    /// <summary>Opening of embankments; its areas and distance between roads are those of the study.</summary>
+    public OpeningSettings Openings { get; init; } = new();
 
     /// <summary>How far a given point may be moved, m; null for the larger of 60 m and five cells (own rule, measured on published drainage areas).</summary>
     public double? SnapM { get; init; }
@@ -120,6 +135,15 @@ public sealed record StudyResult(
     IReadOnlyList<RoadResult> Roads,
     IReadOnlyList<Finding> Findings)
 {
+    /// <summary>Openings of embankments.</summary>
+    public IReadOnlyList<OpeningResult> Openings { get; init; } = [];
+
+    /// <summary>Outlines in the untouched terrain, where openings change the area.</summary>
+    public IReadOnlyList<UntouchedWatershed> Untouched { get; init; } = [];
+
+    /// <summary>What differs from the run before; empty for a first run.</summary>
+    public IReadOnlyList<CrossingChange> Changes { get; init; } = [];
+
     /// <summary>Every layer and table, in output units.</summary>
     /// <param name="units">System of units.</param>
     /// <param name="run">Keys and values of the run table.</param>
@@ -132,9 +156,12 @@ public sealed record StudyResult(
         ResultLayers.Streams.Build(Streams, units),
         ResultLayers.Roads.Build(Roads, units),
         ResultLayers.Culverts.Build(Crossings.Where(c => c.Barrel?.Line is not null), units),
+        TerrainLayers.Openings.Build(Openings, units),
+        TerrainLayers.Untouched.Build(Untouched, units),
         ResultLayers.Flows.Build(Crossings.SelectMany(c => c.Sheet.Flows.Select(f => (c.CrossingId, f))), units),
         ResultLayers.Options.Build(Crossings.SelectMany(c => c.Options.Select((o, i) => (c.CrossingId, i + 1, o))), units),
         ResultLayers.Ratings.Build(Crossings.SelectMany(c => c.Rating.Select(p => (c.CrossingId, p))), units),
+        TerrainLayers.Changes.Build(Changes, units),
         ResultLayers.Findings.Build(Findings, units),
         ResultLayers.Run.Build(run, units),
     ];

@@ -61,7 +61,7 @@ public static class TailwaterStage
         var cell = Math.Max(frame.CellWidthM, frame.CellHeightM);
         var offRoad = (crossing.Road?.WidthM ?? 0) + cell;
         var reach = Math.Max(SlopeReachM, 5 * cell) + offRoad;
-        var path = FlowSteps.DownstreamPath(terrain.Direction, crossing.OutletCell, reach);
+        var path = FlowSteps.DownstreamPath(terrain.Direction, crossing.MeetingCell, reach);
         var points = new List<(double DistanceM, double ElevationM)>();
         var distance = 0.0;
         for (var i = 0; i < path.Count; i++)

@@ -39,7 +39,7 @@ public static class WatershedSurvey
     {
         ArgumentNullException.ThrowIfNull(terrain);
         ArgumentNullException.ThrowIfNull(crossings);
-        var cells = crossings.Select(c => c.OutletCell).Distinct().ToArray();
+        var cells = crossings.Select(c => c.WatershedCell).Distinct().ToArray();
         var labelling = WatershedLabels.Label(terrain.Direction, cells);
         var paths = LongestFlowPath.Trace(terrain.Direction, cells);
         var depth = new Grid<float>(terrain.Elevation.Frame);
@@ -49,7 +49,7 @@ public static class WatershedSurvey
         return new(
             labelling.Labels,
             new OutletTree(labelling.Parent),
-            [.. crossings.Select(c => At(byOutlet[outletOf[c.OutletCell]], c.Id))]);
+            [.. crossings.Select(c => At(byOutlet[outletOf[c.WatershedCell]], c.Id))]);
     }
 
     /// <summary>Surveys local and total watersheds of all outlets.</summary>

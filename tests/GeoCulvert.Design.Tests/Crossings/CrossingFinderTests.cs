@@ -69,18 +69,41 @@ public class CrossingFinderTests
     {
         // Two arms two columns apart that join two rows below the road.
         var braid = HandGrid.Directions(10, "525255", "525255", "525255", "562455", "552555");
-        Assert.Equal(2, Assert.Single(Find(braid, 2, Road("R", (0, 30), (60, 30))).Crossings).MeetingCount);
+        var crossing = Assert.Single(Find(braid, 2, Road("R", (0, 30), (60, 30))).Crossings);
+        Assert.Equal(2, crossing.MeetingCount);
+        // The watershed ends where the arms join, in the fourth row, and holds both.
+        var join = crossing.WatershedCell;
+        Assert.Equal(3, join / 6);
+        Assert.True(crossing.AccumulationCells >= 6, $"{crossing.AccumulationCells} cells");
         // The same arms with the distance set below their spacing: two.
         Assert.Equal(2, CrossingFinder.Find([Road("R", (0, 30), (60, 30))], braid, HandGrid.Accumulation(braid), 2, new() { SameCrossingM = 15 }).Crossings.Count);
     }
 
     [Fact]
-    public void TwoRoadsOverOneStepShareACell()
+    public void RoadsCloseTogetherHaveOneCulvert()
+    {
+        // Shoulder to shoulder the roads at y = 46 and y = 16 lie 30 - 8 = 22 m apart.
+        var direction = HandGrid.Directions(10, "66244", "66244", "66244", "66244", "66244", "66244");
+        RoadAlignment a = Road("A", (0, 16), (50, 16)), b = Road("B", (0, 46), (50, 46));
+        var crossing = Assert.Single(Find(direction, 5, a, b).Crossings);
+        Assert.Equal("A 0+025", crossing.Id);
+        Assert.Equal(["B", "A"], crossing.Over.Select(o => o.Road.Name));
+        Assert.Equal([-30.0, 0], crossing.Over.Select(o => o.AlongM));
+        // The step from the centre of the first row (y = 55) to that of the second (45) passes y = 46.
+        Assert.Equal((0 * 5) + 2, crossing.OutletCell);
+        Assert.Equal(5, crossing.AccumulationCells);
+
+        var apart = CrossingFinder.Find([a, b], direction, HandGrid.Accumulation(direction), 5, new() { TogetherM = 20 });
+        Assert.Equal(["A 0+025", "B 0+025"], apart.Crossings.Select(c => c.Id));
+    }
+
+    [Fact]
+    public void TwoRoadsOverOneStepAreOneCrossing()
     {
         var direction = HandGrid.Directions(10, "66244", "66244", "66244", "66244", "66244");
-        var found = Find(direction, 5, Road("A", (0, 21), (50, 21)), Road("B", (0, 19), (50, 19)));
-        Assert.Equal(["A 0+025", "B 0+025"], found.Crossings.Select(c => c.Id));
-        Assert.All(found.Crossings, c => Assert.Contains(c.Findings, f => f.Code == "two-crossings-on-one-cell"));
+        var crossing = Assert.Single(Find(direction, 5, Road("A", (0, 21), (50, 21)), Road("B", (0, 19), (50, 19))).Crossings);
+        Assert.Equal(["A", "B"], crossing.Over.Select(o => o.Road.Name));
+        Assert.Equal(2, crossing.Over[1].AlongM, 9);
     }
 
     [Fact]
@@ -99,4 +122,28 @@ public class CrossingFinderTests
         var direction = HandGrid.Directions(10, "66244", "66244");
         Assert.Empty(Find(direction, 1, Road("R", (1000, 1000), (2000, 1000))).Crossings);
     }
+}
+
+/// <summary>Low points of road profiles, read off by eye.</summary>
+public class RoadLowPointsTests
+{
+    private static ProfilePoint[] Profile(params double[] levels) => [.. levels.Select((z, i) => new ProfilePoint(10 * i, z))];
+
+    [Fact]
+    public void ASagIsALowPoint() => Assert.Equal([20.0], RoadLowPoints.Of(Profile(5, 4, 3, 4, 5)));
+
+    [Fact]
+    public void ALevelSagGivesItsMiddle() => Assert.Equal([25.0], RoadLowPoints.Of(Profile(5, 4, 3, 3, 4, 5)));
+
+    [Fact]
+    public void EndsAndSmallDipsAreNone() => Assert.Empty(RoadLowPoints.Of(Profile(1, 2, 1.8, 2, 5, 4.9, 4.8)));
+
+    [Fact]
+    public void TheLowerOfTwoDipsCloseByCounts() => Assert.Equal([30.0], RoadLowPoints.Of(Profile(5, 3, 3.1, 2.9, 4)));
+
+    [Fact]
+    public void TwoSagsWithARiseBetweenAreTwo() => Assert.Equal([10.0, 30.0], RoadLowPoints.Of(Profile(5, 3, 4, 2, 4)));
+
+    [Fact]
+    public void ADipAfterTheFirstRiseCounts() => Assert.Equal([10.0, 40.0], RoadLowPoints.Of(Profile(2, 1, 1.5, 1.4, 1.1, 1.4, 1.6)));
 }
