@@ -186,7 +186,9 @@ public static class EmbankmentOpenings
                 if (IsOpenedNear(dam.Cell) || _refused.Contains(dam.Cell)) continue;
                 // Ground between carriageways gets its water from upstream only while the first is shut.
                 if (round == 1 && _path.IsBetween(_elevation.Frame, dam.Cell, dam.Place)) continue;
-                if (_path.Find(_elevation, _band, dam.Cell, out var reason) is { } way && way.DepthM >= _settings.SmallestPondM)
+                var way = _path.Find(_elevation, _band, dam.Cell, out var reason);
+                if (way is not null && dam.Reason == OpeningReason.Diversion && PassesNear(dam.Cell, way.Cells, solved.Direction)) continue;
+                if (way is not null)
                 {
                     Open(way, dam.Reason, null, solved, dam.IsLake);
                     continue;
@@ -195,6 +197,15 @@ public static class EmbankmentOpenings
                 _refused.Add(dam.Cell);
                 SayShut(dam, reason);
             }
+        }
+
+        /// <summary>Whether the water of a cell comes to the end of a way by itself, within three times its length: a stream that crosses very obliquely is not turned.</summary>
+        private bool PassesNear(int cell, int[] way, Grid<byte> direction)
+        {
+            var frame = _elevation.Frame;
+            Coordinate end = FlowSteps.Centre(frame, way[^1]), start = FlowSteps.Centre(frame, way[0]);
+            var cellM = Math.Max(frame.CellWidthM, frame.CellHeightM);
+            return FlowSteps.DownstreamPath(direction, cell, 3 * start.Distance(end)).Any(c => FlowSteps.Centre(frame, c).Distance(end) <= 3 * cellM);
         }
 
         /// <summary>Says which dams stay shut where only known culverts are opened.</summary>

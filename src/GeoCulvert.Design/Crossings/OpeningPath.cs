@@ -23,8 +23,9 @@ internal sealed class OpeningPath
     /// <param name="BedM">Bed at each cell, m.</param>
     /// <param name="DepthM">Largest depth below the terrain, m.</param>
     /// <param name="VolumeM3">Volume taken out, m3.</param>
+    /// <param name="RoadDepthM">Depth below the terrain at the centrelines, the least of all roads over it, m: a bank stands there, a cutting does not.</param>
     /// <param name="Meetings">Roads over it, from the upstream end.</param>
-    public sealed record Way(int[] Cells, float[] BedM, double DepthM, double VolumeM3, IReadOnlyList<CentrelineMeeting> Meetings);
+    public sealed record Way(int[] Cells, float[] BedM, double DepthM, double VolumeM3, double RoadDepthM, IReadOnlyList<CentrelineMeeting> Meetings);
 
     /// <summary>Whether a cell lies between two roads that count as one way under: another centreline is close behind it, seen from where its water would go.</summary>
     public bool IsBetween(GridFrame frame, int cell, BandCell place)
@@ -97,6 +98,12 @@ internal sealed class OpeningPath
             var slope = ((double)elevation.Cells[t.From] - elevation.Cells[t.Cell]) / t.LengthM;
             if (best is not null && slope * EquallySteep <= steepest) continue;
             if (Carve(elevation, t.From, t.Cell, t.Meetings) is not { } way) continue;
+            if (way.RoadDepthM < _settings.SmallestPondM)
+            {
+                reason = $"the road stands only {way.RoadDepthM:0.0} m above the way: no embankment";
+                continue;
+            }
+
             if (way.DepthM > _settings.DeepestM)
             {
                 reason = $"the embankment stands {way.DepthM:0.0} m above the way, the limit is {_settings.DeepestM:0.0} m";
@@ -120,6 +127,9 @@ internal sealed class OpeningPath
         double zb = elevation.Cells[to], za = Math.Max(elevation.Cells[from], zb), depth = 0, volume = 0, before = za;
         if (double.IsNaN(za)) return null;
         var bed = new float[cells.Length];
+        var overRoad = new double[meetings.Count];
+        var nearest = new double[meetings.Count];
+        Array.Fill(nearest, double.PositiveInfinity);
         for (var i = 0; i < cells.Length; i++)
         {
             var z = elevation.Cells[cells[i]];
@@ -130,9 +140,14 @@ internal sealed class OpeningPath
             before = bed[i];
             depth = Math.Max(depth, z - bed[i]);
             volume += (z - bed[i]) * frame.CellAreaM2;
+            for (var m = 0; m < meetings.Count; m++)
+            {
+                var away = Math.Abs(meetings[m].AlongM - along);
+                if (away < nearest[m]) (nearest[m], overRoad[m]) = (away, z - bed[i]);
+            }
         }
 
-        return new(cells, bed, depth, volume, meetings);
+        return new(cells, bed, depth, volume, overRoad.Min(), meetings);
     }
 
     /// <summary>The cells of a straight line, each a neighbour of the one before (Bresenham 1965).</summary>
