@@ -62,6 +62,7 @@ internal static class ProjectKeys
         Length("crossings", "snap", null, "how far a given point may be moved to its stream; default: the larger of 60 m and five cells", 0),
         new("crossings", "cross_drain_area", KeyKind.Quantity, "\"1 ha\"", "drainage area from which water let through an embankment, or met at a low point of the road, is a crossing though it is no stream yet (own rule)") { Dimension = "area", Least = 1 },
         Length("crossings", "together", "\"30 m\"", "roads whose shoulders follow each other within this distance along the stream have one culvert under all (own rule)", 0),
+        Length("crossings", "relief_spacing", null, "longest stretch of road without a way under; where it is longer a ditch relief is placed; default: none", 20),
         new("crossings", "overrides", KeyKind.Path, null, "table keyed by crossing_id that sets values of single crossings"),
         new("crossings", "accept_edge_contact", KeyKind.Number, "0.0", "largest share of a watershed's boundary on the edge of the terrain for which a size is still issued") { Least = 0, Most = 1 },
 

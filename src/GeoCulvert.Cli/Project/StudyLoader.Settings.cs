@@ -122,6 +122,7 @@ internal sealed partial class StudyLoader
             Openings = new OpeningSettings
             {
                 Scope = _project["terrain"].Text("openings") switch { "known" => OpeningScope.Known, "none" => OpeningScope.None, _ => OpeningScope.Search },
+                ReliefSpacingM = _project["crossings"].Number("relief_spacing"),
                 LongestM = _project["terrain"].Needed("opening_length"),
                 DeepestM = _project["terrain"].Needed("opening_depth"),
                 SmallestPondM = _project["terrain"].Needed("opening_pond"),

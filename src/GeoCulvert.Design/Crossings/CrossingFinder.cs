@@ -60,7 +60,9 @@ public static class CrossingFinder
         var crossings = new List<Crossing>();
         var findings = new List<Finding>();
         var ids = new HashSet<string>(StringComparer.Ordinal);
-        var opened = search.Openings.SelectMany(o => o.Cells).ToHashSet();
+        var opened = new Dictionary<int, OpeningReason>();
+        foreach (var opening in search.Openings)
+            foreach (var cell in opening.Cells) opened.TryAdd(cell, opening.Reason);
         foreach (var road in roads)
         {
             if (road.GapCount > 0) findings.Add(CrossingFindings.RoadGap.With($"road {road.Name} has {road.GapCount} gap(s)", road.GapCount, 0));
@@ -82,16 +84,18 @@ public static class CrossingFinder
 
     /// <summary>Meetings that count, by station, with why they do.</summary>
     private static Dictionary<RoadMeeting, CrossingOrigin> Meetings(
-        RoadAlignment road, Grid<byte> direction, Grid<int> accumulation, long streamCells, HashSet<int> opened, CrossingSearch search)
+        RoadAlignment road, Grid<byte> direction, Grid<int> accumulation, long streamCells, Dictionary<int, OpeningReason> opened, CrossingSearch search)
     {
         var least = Math.Min(streamCells, search.CrossDrainCells ?? long.MaxValue);
         var low = search.CrossDrainCells is null ? null : search.LowPoints?.Invoke(road);
         var reachM = search.LowPointReachM ?? Math.Max(10, 2 * Math.Max(direction.Frame.CellWidthM, direction.Frame.CellHeightM));
         var counted = new Dictionary<RoadMeeting, CrossingOrigin>();
-        foreach (var meeting in RoadMeetings.Find(road, direction, c => accumulation.Cells[c] >= least))
+        bool IsRelief(int cell) => opened.TryGetValue(cell, out var reason) && reason == OpeningReason.DitchRelief;
+        foreach (var meeting in RoadMeetings.Find(road, direction, c => accumulation.Cells[c] >= least || IsRelief(c)))
         {
-            if (accumulation.Cells[meeting.Cell] >= streamCells) counted.Add(meeting, CrossingOrigin.Found);
-            else if (opened.Contains(meeting.Cell)) counted.Add(meeting, CrossingOrigin.Opening);
+            if (IsRelief(meeting.Cell)) counted.Add(meeting, CrossingOrigin.DitchRelief);
+            else if (accumulation.Cells[meeting.Cell] >= streamCells) counted.Add(meeting, CrossingOrigin.Found);
+            else if (opened.ContainsKey(meeting.Cell)) counted.Add(meeting, CrossingOrigin.Opening);
             else if (low?.Any(s => Math.Abs(s - meeting.StationM) <= reachM) == true) counted.Add(meeting, CrossingOrigin.LowPoint);
         }
 

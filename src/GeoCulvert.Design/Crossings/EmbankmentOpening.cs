@@ -17,6 +17,9 @@ public enum OpeningReason
 
     /// <summary>A stream is turned along the embankment in the terrain model.</summary>
     Diversion,
+
+    /// <summary>A long ditch is relieved by a rule of spacing.</summary>
+    DitchRelief,
 }
 
 /// <summary>Which embankments may be opened.</summary>
@@ -71,6 +74,9 @@ public sealed record OpeningSettings
     /// <summary>Distance along the road from which a stream that follows it counts as turned, m; null for the larger of 30 m and three road widths.</summary>
     public double? TurnedM { get; init; }
 
+    /// <summary>Longest stretch of road without a way under, m; where it is longer a ditch relief is placed. Null for none.</summary>
+    public double? ReliefSpacingM { get; init; }
+
     /// <summary>Solves of the whole terrain at most, the first included.</summary>
     public int MostRounds { get; init; } = 6;
 }
@@ -122,6 +128,7 @@ public sealed record EmbankmentOpening(LineString Line, int[] Cells, float[] Bed
         OpeningReason.KnownCulvert => $"known culvert {KnownId}",
         OpeningReason.GivenCrossing => $"given crossing {KnownId}",
         OpeningReason.Ponding => $"water ponds {PondDepthM:0.0} m deep behind the embankment",
+        OpeningReason.DitchRelief => "relief of a long ditch by the rule of spacing",
         _ => "a stream is turned along the embankment",
     };
 }
@@ -164,6 +171,12 @@ public static class OpeningFindings
         "known-culvert-not-used", Severity.Warning,
         "A known culvert opens nothing in the terrain model.",
         "Check its ends against the terrain and the road on the map.");
+
+    /// <summary>A ditch relief was placed.</summary>
+    public static readonly FindingCode Relief = new(
+        "ditch-relief-placed", Severity.Note,
+        "The stretch of road without a way under was longer than the spacing asked for, so a ditch relief was placed.",
+        "Move it to a fitting place, or change [crossings] relief_spacing.");
 
     /// <summary>Search stopped at the limit of rounds.</summary>
     public static readonly FindingCode Unfinished = new(

@@ -64,6 +64,8 @@ public static class EmbankmentOpenings
                 if (unfinished) break;
             }
 
+            work.OpenReliefs(solved);
+            if (work.TakeNew()) solved = solve(elevation, work.Paths);
             if (unfinished) work.Findings.Add(OpeningFindings.Unfinished.With($"{settings.MostRounds} rounds", settings.MostRounds, settings.MostRounds));
             if (work.Openings.Count == 0) return new(solved, null, [], work.Findings);
             var area = elevation.Frame.CellAreaM2;
@@ -88,7 +90,7 @@ public static class EmbankmentOpenings
     {
         ArgumentNullException.ThrowIfNull(opening);
         ArgumentNullException.ThrowIfNull(settings);
-        var kind = opening.KnownId is null ? OpeningFindings.OpenedBySearch : OpeningFindings.OpenedAtKnown;
+        var kind = opening.Reason == OpeningReason.DitchRelief ? OpeningFindings.Relief : opening.KnownId is null ? OpeningFindings.OpenedBySearch : OpeningFindings.OpenedAtKnown;
         var where = $"{opening.Road.IdAt(opening.StationM)}: {opening.LengthM:0.0} m long, {opening.DepthM:0.0} m deep; {opening.ReasonText}";
         var findings = new List<Finding> { kind.With(where, opening.DepthM) };
         var taken = opening.AreaAfterM2 - opening.AreaBeforeM2;
@@ -197,6 +199,47 @@ public static class EmbankmentOpenings
                 _refused.Add(dam.Cell);
                 SayShut(dam, reason);
             }
+        }
+
+        /// <summary>Places ditch reliefs, evenly, where the stretch between two ways under (or an end of the road) is longer than the spacing, if there is lower ground beyond.</summary>
+        public void OpenReliefs(DrainedTerrain solved)
+        {
+            if (_settings.ReliefSpacingM is not { } spacingM) return;
+            var least = Math.Max(1, _settings.PondAreaM2 / _elevation.Frame.CellAreaM2);
+            var cellM = Math.Max(_elevation.Frame.CellWidthM, _elevation.Frame.CellHeightM);
+            for (var k = 0; k < _roads.Count; k++)
+            {
+                var road = _roads[k];
+                var ways = RoadMeetings.Find(road, solved.Direction, c => solved.Accumulation.Cells[c] >= least).Select(m => m.StationM).Append(road.EndStationM);
+                var from = road.StartStationM;
+                foreach (var to in ways)
+                {
+                    var pieces = (int)Math.Ceiling((to - from) / spacingM);
+                    for (var i = 1; i < pieces; i++)
+                    {
+                        // The wettest cell beside the road near the place is the ditch.
+                        var station = from + ((to - from) * i / pieces);
+                        var ditch = Beside(k, station, 2 * cellM).OrderByDescending(c => solved.Accumulation.Cells[c]).ThenBy(c => c).Cast<int?>().FirstOrDefault();
+                        if (ditch is { } cell && !IsOpenedNear(cell) && _path.Find(_elevation, _band, cell, out _) is { } way) Open(way, OpeningReason.DitchRelief, null, solved, false);
+                    }
+
+                    from = to;
+                }
+            }
+        }
+
+        private IEnumerable<int> Beside(int road, double stationM, double alongM)
+        {
+            var frame = _elevation.Frame;
+            var middle = _roads[road].PointAt(stationM);
+            var reach = (_roads[road].WidthM / 2) + (_roads[road].SideSlope * 3) + alongM;
+            for (var r = Math.Max(frame.RowAt(middle.Y + reach), 0); r <= Math.Min(frame.RowAt(middle.Y - reach), frame.Rows - 1); r++)
+                for (var c = Math.Max(frame.ColumnAt(middle.X - reach), 0); c <= Math.Min(frame.ColumnAt(middle.X + reach), frame.Columns - 1); c++)
+                {
+                    var cell = (r * frame.Columns) + c;
+                    if (_band.TryGet(cell, out var place) && place.Road == road && Math.Abs(place.StationM - stationM) <= alongM && Math.Abs(place.OffsetM) > _roads[road].WidthM / 2 && !float.IsNaN(_elevation.Cells[cell]))
+                        yield return cell;
+                }
         }
 
         /// <summary>Whether the water of a cell comes to the end of a way by itself, within three times its length: a stream that crosses very obliquely is not turned.</summary>

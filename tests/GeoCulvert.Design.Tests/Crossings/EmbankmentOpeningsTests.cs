@@ -277,4 +277,20 @@ public class EmbankmentOpeningsTests
             Assert.Equal(terrain.Direction.Cells.Length, outlets);
         }
     }
+
+    [Fact]
+    public void LongDitchesAreRelieved()
+    {
+        // A plain hillside, 2 % to the south and 1 % to the east along the road: the ditch above the bank runs on for 141 m.
+        var valley = new BuiltValley { Ground = (x, y) => 100 + (0.02 * (y - 60)) - (0.01 * x) }.Bank("R", 0, 60, 141, 60, a => 102 - (0.01 * a));
+        var settings = new OpeningSettings { ReliefSpacingM = 50, PondAreaM2 = 1e5, StreamAreaM2 = 1e5 };
+        var opened = valley.Solve(valley.Elevation(), settings);
+
+        // 141 / 50 -> three pieces of 47 m: reliefs at 47 and 94, give or take two cells along the ditch and the skew of the way through.
+        Assert.Equal([OpeningReason.DitchRelief, OpeningReason.DitchRelief], opened.Openings.Select(o => o.Reason));
+        Assert.Equal([47.0, 94.0], opened.Openings.Select(o => o.StationM), (a, b) => Math.Abs(a - b) <= 10);
+        var crossings = CrossingFinder.Find(valley.Roads, opened.Terrain.Direction, opened.Terrain.Accumulation, 100000, new() { Openings = opened.Openings }).Crossings;
+        Assert.Equal([CrossingOrigin.DitchRelief, CrossingOrigin.DitchRelief], crossings.Select(c => c.Origin));
+        Assert.Empty(valley.Solve(valley.Elevation(), settings with { ReliefSpacingM = null }).Openings);
+    }
 }
