@@ -52,6 +52,40 @@ public static unsafe class VectorSource
         return ReadAll(path, handle, crs, plane);
     }
 
+    /// <summary>Reads a plain table, or the fields of a layer without its geometries.</summary>
+    /// <param name="path">File or data source.</param>
+    /// <param name="table">Its name; null for the first.</param>
+    /// <exception cref="InputException">File or table cannot be used.</exception>
+    public static IReadOnlyList<VectorFeature> ReadTable(string path, string? table)
+    {
+        ArgumentNullException.ThrowIfNull(path);
+        Gdal.Ensure();
+        Gdal.Clear();
+        var opened = Native.GDALOpenEx(path, 0x04 | 0x40, 0, 0, 0);
+        if (opened == 0) throw new InputException(path, $"something GDAL does not open as a table ({Gdal.Says()})", "a table that GDAL reads");
+        using var dataset = new DatasetHandle(opened);
+        var handle = Find(dataset, path, table);
+        var fields = Fields(handle);
+        var rows = new List<VectorFeature>();
+        Native.OGR_L_ResetReading(handle);
+        for (nint feature; (feature = Native.OGR_L_GetNextFeature(handle)) != 0;)
+        {
+            rows.Add(new VectorFeature(Native.OGR_F_GetFID(feature), GeometryCollection.Empty, Values(feature, fields)));
+            Native.OGR_F_Destroy(feature);
+        }
+
+        var says = Gdal.Says();
+        return says.Length == 0 ? rows : throw new InputException(path, $"rows that GDAL cannot read ({says})", "a whole, undamaged file");
+    }
+
+    private static (string Name, int Type)[] Fields(nint layer)
+    {
+        var definition = Native.OGR_L_GetLayerDefn(layer);
+        return [.. Enumerable.Range(0, Native.OGR_FD_GetFieldCount(definition))
+            .Select(i => Native.OGR_FD_GetFieldDefn(definition, i))
+            .Select(f => (Native.Text(Native.OGR_Fld_GetNameRef(f)), Native.OGR_Fld_GetType(f)))];
+    }
+
     private static nint Find(DatasetHandle dataset, string path, string? layer)
     {
         var count = Native.GDALDatasetGetLayerCount(dataset.Pointer);
@@ -64,11 +98,7 @@ public static unsafe class VectorSource
 
     private static VectorLayer ReadAll(string path, nint layer, Crs crs, WorkingPlane plane)
     {
-        var definition = Native.OGR_L_GetLayerDefn(layer);
-        var fields = Enumerable.Range(0, Native.OGR_FD_GetFieldCount(definition))
-            .Select(i => Native.OGR_FD_GetFieldDefn(definition, i))
-            .Select(f => (Name: Native.Text(Native.OGR_Fld_GetNameRef(f)), Type: Native.OGR_Fld_GetType(f)))
-            .ToArray();
+        var fields = Fields(layer);
         var features = new List<VectorFeature>();
         var findings = new List<Finding>();
         Native.OGR_L_ResetReading(layer);

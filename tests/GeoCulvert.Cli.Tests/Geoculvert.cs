@@ -30,4 +30,7 @@ internal static class Geoculvert
         using var crs = Crs.Parse("EPSG:26912");
         return VectorSource.Read(geoPackage, layer, null, new WorkingPlane(crs)).Features;
     }
+
+    /// <summary>Rows of a plain table of a GeoPackage.</summary>
+    public static IReadOnlyList<VectorFeature> Table(string geoPackage, string table) => VectorSource.ReadTable(geoPackage, table);
 }
