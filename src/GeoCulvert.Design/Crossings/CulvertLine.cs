@@ -39,6 +39,12 @@ public sealed record CrossingOverrides(string CrossingId)
     /// <summary>Lowest road level near the crossing, m; also taken as the level at the crossing.</summary>
     public double? RoadElevationM { get; init; }
 
+    /// <summary>Width of the road from shoulder to shoulder here, m.</summary>
+    public double? RoadWidthM { get; init; }
+
+    /// <summary>Embankment slope here, horizontal per one vertical.</summary>
+    public double? SideSlope { get; init; }
+
     /// <summary>Skew of the barrel, degrees, 0-90 measured from the perpendicular of the road; the sense stays that of the flow.</summary>
     public double? SkewDeg { get; init; }
 }

@@ -57,28 +57,36 @@ public static class CulvertLineSurvey
         if (level is null) findings.Add(CrossingFindings.RoadLevelUnknown.With(road is null ? "no road at this crossing" : $"station {StationText.Of(crossing.StationM!.Value)}"));
 
         var skew = Skew(crossing, overrides, settings, findings);
+        // A known culvert brings its own ends; figures given for the crossing go before it.
+        var known = crossing.Opening?.Known?.Ends(crossing.Opening.Line.StartPoint.Coordinate);
+        var given = overrides with
+        {
+            LengthM = overrides.LengthM ?? known?.Inlet.Distance(known.Value.Outlet),
+            InletElevationM = overrides.InletElevationM ?? Finite(known?.Inlet.Z),
+            OutletElevationM = overrides.OutletElevationM ?? Finite(known?.Outlet.Z),
+        };
         var farM = (road is null ? 0 : Math.Max(upper.AwayM, lower.AwayM) + (road.WidthM / 2) + (road.SideSlope * 60)) / Math.Cos(Math.Min(skew ?? 0, 80) * Math.PI / 180);
-        var bed = new ChannelBed(crossing, direction, accumulation, elevation, windowM, windowM + Math.Max(farM, overrides.LengthM ?? 0));
+        var bed = new ChannelBed(crossing, direction, accumulation, elevation, windowM, windowM + Math.Max(farM, given.LengthM ?? 0));
         double up = double.NaN, down = double.NaN;
         if (road is not null && level is not null)
         {
-            up = upper.AwayM + ReachM(upper.Road!, upper.Level!.Value, skew ?? 0, bed.AtCrossingM, overrides.InletElevationM, r => bed.UpstreamM(upper.AwayM + r));
-            down = lower.AwayM + ReachM(lower.Road!, lower.Level!.Value, skew ?? 0, bed.AtCrossingM, overrides.OutletElevationM, r => bed.DownstreamM(lower.AwayM + r));
+            up = upper.AwayM + ReachM(upper.Road!, given, upper.Level!.Value, skew ?? 0, bed.AtCrossingM, given.InletElevationM, r => bed.UpstreamM(upper.AwayM + r));
+            down = lower.AwayM + ReachM(lower.Road!, given, lower.Level!.Value, skew ?? 0, bed.AtCrossingM, given.OutletElevationM, r => bed.DownstreamM(lower.AwayM + r));
         }
 
-        if (overrides.LengthM is { } given)
+        if (given.LengthM is { } whole)
         {
             // A given length is shared out as the measured one, or evenly.
             var upShare = double.IsNaN(up + down) ? 0.5 : up / (up + down);
-            (up, down) = (given * upShare, given * (1 - upShare));
+            (up, down) = (whole * upShare, whole * (1 - upShare));
         }
 
-        var inlet = Figure.Of(overrides.InletElevationM, bed.UpstreamM(double.IsNaN(up) ? 0 : up), $"bed of the stream smoothed over {windowM:0.#} m upstream of the inlet");
-        var outlet = Figure.Of(overrides.OutletElevationM, bed.DownstreamM(double.IsNaN(down) ? 0 : down), $"bed of the stream smoothed over {windowM:0.#} m downstream of the outlet");
+        var inlet = Figure.Of(given.InletElevationM, bed.UpstreamM(double.IsNaN(up) ? 0 : up), $"bed of the stream smoothed over {windowM:0.#} m upstream of the inlet");
+        var outlet = Figure.Of(given.OutletElevationM, bed.DownstreamM(double.IsNaN(down) ? 0 : down), $"bed of the stream smoothed over {windowM:0.#} m downstream of the outlet");
         if (inlet is null || outlet is null) findings.Add(CrossingFindings.BedUnknown.With(inlet is null ? "at the inlet" : "at the outlet"));
         var line = new CulvertLine(crossing.Id)
         {
-            Length = Figure.Of(overrides.LengthM, up + down, LengthText(crossing, skew ?? 0)),
+            Length = Figure.Of(given.LengthM, up + down, LengthText(crossing, skew ?? 0)),
             InletElevation = inlet,
             OutletElevation = outlet,
             RoadElevation = level,
@@ -86,7 +94,7 @@ public static class CulvertLineSurvey
             LowestRoadStationM = double.IsNaN(lowest.StationM) ? null : lowest.StationM,
             SkewDeg = skew,
             Profile = profile,
-            Line = double.IsNaN(up + down) ? null : Barrel(crossing, up, down, skew, inlet, outlet),
+            Line = known is { } ends && overrides.LengthM is null ? Between(ends.Inlet, inlet, ends.Outlet, outlet) : double.IsNaN(up + down) ? null : Barrel(crossing, up, down, skew, inlet, outlet),
         };
         if (line.SlopeMPerM <= 0) findings.Add(CrossingFindings.AdverseBed.With($"slope {line.SlopeMPerM:0.0000} m/m from {inlet!.Value:0.00} m to {outlet!.Value:0.00} m", line.SlopeMPerM, 0));
         if (line.FillHeightM <= 0) findings.Add(CrossingFindings.NoFill.With($"road {level!.Value:0.00} m, inlet bed {inlet!.Value:0.00} m", line.FillHeightM, 0));
@@ -152,11 +160,11 @@ public static class CulvertLineSurvey
         return settings.LargestSkewDeg;
     }
 
-    private static double ReachM(RoadAlignment road, double roadM, double skewDeg, double firstBedM, double? givenM, Func<double, double> bedAt)
+    private static double ReachM(RoadAlignment road, CrossingOverrides given, double roadM, double skewDeg, double firstBedM, double? givenM, Func<double, double> bedAt)
     {
         var cos = Math.Cos(skewDeg * Math.PI / 180);
-        double Reach(double bedM) => ((road.WidthM / 2) + (road.SideSlope * Math.Max(roadM - bedM, 0))) / cos;
-        if (givenM is { } given) return Reach(given);
+        double Reach(double bedM) => (((given.RoadWidthM ?? road.WidthM) / 2) + ((given.SideSlope ?? road.SideSlope) * Math.Max(roadM - bedM, 0))) / cos;
+        if (givenM is { } level) return Reach(level);
         if (double.IsNaN(firstBedM)) return double.NaN;
         var reach = Reach(firstBedM);
         for (var i = 0; i < Repetitions; i++)
@@ -169,6 +177,11 @@ public static class CulvertLineSurvey
 
         return reach;
     }
+
+    private static double? Finite(double? z) => z is { } v && double.IsFinite(v) ? v : null;
+
+    private static LineString Between(Coordinate inlet, Figure? inletZ, Coordinate outlet, Figure? outletZ) => new([
+        new CoordinateZ(inlet.X, inlet.Y, inletZ?.Value ?? double.NaN), new CoordinateZ(outlet.X, outlet.Y, outletZ?.Value ?? double.NaN)]);
 
     private static LineString Barrel(Crossing crossing, double upM, double downM, double? skewDeg, Figure? inlet, Figure? outlet)
     {

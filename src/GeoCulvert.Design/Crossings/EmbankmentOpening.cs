@@ -38,8 +38,16 @@ public enum OpeningScope
 /// <summary>A culvert that is known to be there.</summary>
 /// <param name="Id">Its name.</param>
 /// <param name="From">One end, m.</param>
-/// <param name="To">The other end, m; which one is upstream is taken from the terrain.</param>
-public sealed record KnownCulvert(string Id, Coordinate From, Coordinate To);
+/// <param name="To">The other end, m; which one is upstream is taken from the terrain. An end with z carries the invert.</param>
+public sealed record KnownCulvert(string Id, Coordinate From, Coordinate To)
+{
+    /// <summary>Both ends, the one nearer to a place upstream first.</summary>
+    public (Coordinate Inlet, Coordinate Outlet) Ends(Coordinate upstream)
+    {
+        ArgumentNullException.ThrowIfNull(upstream);
+        return From.Distance(upstream) <= To.Distance(upstream) ? (From, To) : (To, From);
+    }
+}
 
 /// <summary>Settings of opening embankments. All defaults are own rules.</summary>
 public sealed record OpeningSettings
@@ -91,6 +99,9 @@ public sealed record EmbankmentOpening(LineString Line, int[] Cells, float[] Bed
 {
     /// <summary>Name of the known culvert or given crossing; null when found by search.</summary>
     public string? KnownId { get; init; }
+
+    /// <summary>The known culvert; null without one.</summary>
+    public KnownCulvert? Known { get; init; }
 
     /// <summary>All roads over it, in order from the upstream end.</summary>
     public required IReadOnlyList<RoadAlignment> Roads { get; init; }

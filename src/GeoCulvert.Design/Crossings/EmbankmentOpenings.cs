@@ -158,7 +158,7 @@ public static class EmbankmentOpenings
                 var way = a < 0 || b < 0 || a == b ? null
                     : _elevation.Cells[a] >= _elevation.Cells[b] ? _path.Between(_elevation, a, b) : _path.Between(_elevation, b, a);
                 if (way is null) Findings.Add(OpeningFindings.KnownNotUsed.With($"{culvert.Id}: {(a < 0 || b < 0 ? "an end lies off the terrain" : "no road lies over it")}"));
-                else Open(way, OpeningReason.KnownCulvert, culvert.Id, solved, false);
+                else Open(way, OpeningReason.KnownCulvert, culvert.Id, solved, false, culvert);
             }
         }
 
@@ -264,7 +264,7 @@ public static class EmbankmentOpenings
                     $"{_roads[dam.Place.Road].IdAt(dam.Place.StationM)}: {dam.AreaM2 / 1e4:0.#} ha, {dam.PondDepthM:0.0} m deep; {reason}", dam.PondDepthM));
         }
 
-        private void Open(OpeningPath.Way way, OpeningReason reason, string? knownId, DrainedTerrain solved, bool isLake)
+        private void Open(OpeningPath.Way way, OpeningReason reason, string? knownId, DrainedTerrain solved, bool isLake, KnownCulvert? known = null)
         {
             var frame = _elevation.Frame;
             var first = way.Meetings[0];
@@ -273,6 +273,7 @@ public static class EmbankmentOpenings
                 new LineString([new CoordinateZ(a.X, a.Y, way.BedM[0]), new CoordinateZ(b.X, b.Y, way.BedM[^1])]), way.Cells, way.BedM, reason, _roads[first.Road])
             {
                 KnownId = knownId,
+                Known = known,
                 Roads = [.. way.Meetings.Select(m => _roads[m.Road]).Distinct()],
                 StationM = first.StationM,
                 DepthM = way.DepthM,

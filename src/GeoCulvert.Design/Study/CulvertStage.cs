@@ -40,6 +40,9 @@ public static class CulvertStage
                 OutletElevationM = Given("outlet_elevation"),
                 LengthM = Given("length"),
                 RoadElevationM = roadElevationM,
+                SkewDeg = Given("skew_deg"),
+                RoadWidthM = Given("road_width"),
+                SideSlope = Given("side_slope"),
             });
         var line = Measure(Given("road_elevation"));
         var findings = line.Findings.ToList();

@@ -1,5 +1,6 @@
 using GeoCulvert.Design.Crossings;
 using GeoCulvert.Design.Terrain;
+using NetTopologySuite.Geometries;
 
 namespace GeoCulvert.Design.Tests.Crossings;
 
@@ -292,5 +293,38 @@ public class EmbankmentOpeningsTests
         var crossings = CrossingFinder.Find(valley.Roads, opened.Terrain.Direction, opened.Terrain.Accumulation, 100000, new() { Openings = opened.Openings }).Crossings;
         Assert.Equal([CrossingOrigin.DitchRelief, CrossingOrigin.DitchRelief], crossings.Select(c => c.Origin));
         Assert.Empty(valley.Solve(valley.Elevation(), settings with { ReliefSpacingM = null }).Openings);
+    }
+
+    [Fact]
+    public void AKnownCulvertBringsItsEndsAndInverts()
+    {
+        var valley = BuiltValley.Channel().Bank("R", 0, 60, 141, 60, Crest);
+        var elevation = valley.Elevation();
+        KnownCulvert culvert = new("C7", new CoordinateZ(70.5, 44, 99.5), new CoordinateZ(72.5, 74, 99.9)); // drawn from the outlet up
+        var opened = valley.Solve(elevation, new() { Scope = OpeningScope.Known }, [culvert]);
+        var crossing = Assert.Single(CrossingFinder.Find(valley.Roads, opened.Terrain.Direction, opened.Terrain.Accumulation, 10000, new() { Openings = opened.Openings }).Crossings);
+        var line = CulvertLineSurvey.Measure(crossing, opened.Terrain.Direction, opened.Terrain.Accumulation, elevation);
+        Assert.Equal(Math.Sqrt(4 + 900), line.Length!.Value, 9);
+        Assert.Equal((99.9, 99.5), (line.InletElevation!.Value, line.OutletElevation!.Value));
+        Assert.Equal((72.5, 74.0, 70.5, 44.0), (line.Line!.StartPoint.X, line.Line.StartPoint.Y, line.Line.EndPoint.X, line.Line.EndPoint.Y));
+
+        // A figure given for the crossing goes before.
+        var other = CulvertLineSurvey.Measure(crossing, opened.Terrain.Direction, opened.Terrain.Accumulation, elevation, null, new(crossing.Id) { LengthM = 28, InletElevationM = 99.8 });
+        Assert.Equal((28.0, 99.8, 99.5), (other.Length!.Value, other.InletElevation!.Value, other.OutletElevation!.Value));
+    }
+
+    [Fact]
+    public void TheBarrelUnderTwoCarriagewaysReachesFromToeToToe()
+    {
+        // Roads of 8 m, 2 to 1, crests 4.6475 m above the bed at the lower road: the toes lie (8/2 + 2 h) off the outer centrelines, h road level less bed there.
+        var valley = BuiltValley.Channel().Bank("A", 0, 60, 141, 60, _ => 104.6).Bank("B", 0, 88, 141, 88, _ => 104.6);
+        var elevation = valley.Elevation();
+        var opened = valley.Solve(elevation);
+        var crossing = Assert.Single(CrossingFinder.Find(valley.Roads, opened.Terrain.Direction, opened.Terrain.Accumulation, 9000, new() { Openings = opened.Openings }).Crossings);
+        var line = CulvertLineSurvey.Measure(crossing, opened.Terrain.Direction, opened.Terrain.Accumulation, elevation);
+
+        // Upstream of B: r = 4 + 2 (104.6 - 100.28 - 0.01 r) -> r = 12.64 / 1.02; downstream of A: r = 4 + 2 (4.6 + 0.01 r) -> 13.2 / 0.98. The crown at the centreline is 0.01 to 0.08 m lower on the grid.
+        Assert.InRange(line.Length!.Value, 28 + (12.64 / 1.02) + (13.2 / 0.98) - 0.5, 28 + (12.64 / 1.02) + (13.2 / 0.98) + 0.5);
+        Assert.Equal(104.6, line.LowestRoadElevation!.Value, 1);
     }
 }
