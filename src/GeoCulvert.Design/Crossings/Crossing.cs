@@ -26,20 +26,22 @@ public enum CrossingOrigin
 /// <param name="Road">The road.</param>
 /// <param name="StationM">Its station, m.</param>
 /// <param name="AlongM">Distance along the flow path from the crossing's point, m; negative upstream.</param>
-public sealed record RoadOver(RoadAlignment Road, double StationM, double AlongM);
+/// <param name="Cell">The cell whose step downstream meets its centreline.</param>
+public sealed record RoadOver(RoadAlignment Road, double StationM, double AlongM, int Cell);
 
 /// <summary>A place where water crosses a road.</summary>
 /// <param name="Id">"RD9 12+340", or the id of the given point; unique in a run.</param>
 /// <param name="Origin">Found or given.</param>
 /// <param name="Point">Where the flow path meets the centreline; the outlet cell's centre when there is no road in reach.</param>
 /// <param name="OutletCell">Row-major index of the cell just upstream of the meeting: the watershed ends here.</param>
-/// <param name="AccumulationCells">Cells drained by the outlet cell, itself included.</param>
+/// <param name="AccumulationCells">Cells drained by the outlet cell, itself included, and by those of other arms.</param>
 public sealed record Crossing(string Id, CrossingOrigin Origin, Coordinate Point, int OutletCell, long AccumulationCells)
 {
-    /// <summary>
-    /// The cell at which the watershed ends: the outlet cell, or for a braid the cell below the road where its arms join, so that no arm is lost.
-    /// </summary>
-    public int WatershedCell { get; init; } = OutletCell;
+    /// <summary>The cells of all meetings of the stream with the road here; the outlet cell alone for most.</summary>
+    public IReadOnlyList<int> MeetingCells { get; init; } = [OutletCell];
+
+    /// <summary>Outlet cells of the other arms of a stream that passes this culvert in several; their land is part of the watershed. Empty for most.</summary>
+    public IReadOnlyList<int> OtherArms { get; init; } = [];
 
     /// <summary>The cell whose step downstream meets the centreline at <see cref="Point"/>; the outlet cell lies further up where the culvert also passes under roads upstream.</summary>
     public int MeetingCell { get; init; } = OutletCell;

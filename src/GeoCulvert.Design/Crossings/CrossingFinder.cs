@@ -112,9 +112,16 @@ public static class CrossingFinder
             raised.Add(CrossingFindings.RunsAlong.With($"{group.Count} meetings within {extentM:0.#} m of road; kept the one at {StationText.Of(last.StationM, search.Stationing)}", group.Count, 1));
         if (MeetingGroups.Returns(group, road, direction)) raised.Add(CrossingFindings.ReturnsToSide.With($"{group.Count} meetings", group.Count));
         var id = Unique(ids, road.IdAt(last.StationM, search.Stationing));
-        var crossing = At(road, last, id, origin, direction, accumulation, search, raised) with { MeetingCount = group.Count };
-        var joined = MeetingGroups.Join(group, direction);
-        return joined < 0 || joined == crossing.OutletCell ? crossing : crossing with { WatershedCell = joined, AccumulationCells = accumulation.Cells[joined] };
+        var crossing = At(road, last, id, origin, direction, accumulation, search, raised) with { MeetingCount = group.Count, MeetingCells = [.. group.Select(m => m.Cell)] };
+        var arms = MeetingGroups.OtherArms(group, direction);
+        if (arms.Count > 0)
+        {
+            // What runs down between the arms, no stream by itself, comes to the same culvert.
+            var between = RoadMeetings.Find(road, direction, _ => true, group.Min(m => m.StationM), group.Max(m => m.StationM)).Where(m => group.All(g => g.Cell != m.Cell)).ToList();
+            arms = MeetingGroups.OtherArms([.. between, .. group], direction);
+        }
+
+        return arms.Count == 0 ? crossing : crossing with { OtherArms = arms, AccumulationCells = crossing.AccumulationCells + arms.Sum(a => (long)accumulation.Cells[a]) };
     }
 
     internal static Crossing At(
@@ -145,7 +152,7 @@ public static class CrossingFinder
             SkewDeg = skew,
             MeetsRoad = true,
             Opening = opening,
-            Over = [new(road, meeting.StationM, 0)],
+            Over = [new(road, meeting.StationM, 0, meeting.Cell)],
             Findings = [.. raised.Select(f => f.At(id))],
         };
     }

@@ -15,18 +15,21 @@ internal static class RoadMeetings
 {
     private const double Parallel = 1e-12;
 
-    /// <summary>Meetings of the steps of all cells that <paramref name="isStream"/> accepts, by station; one per step.</summary>
-    public static List<RoadMeeting> Find(RoadAlignment road, Grid<byte> direction, Func<int, bool> isStream)
+    /// <summary>Meetings of the steps of all cells that <paramref name="isStream"/> accepts, by station; one per step; within a stretch of the road where one is given.</summary>
+    public static List<RoadMeeting> Find(
+        RoadAlignment road, Grid<byte> direction, Func<int, bool> isStream, double fromStationM = double.NegativeInfinity, double toStationM = double.PositiveInfinity)
     {
         var frame = direction.Frame;
         var byCell = new Dictionary<int, RoadMeeting>();
         var pieceM = 8 * Math.Max(frame.CellWidthM, frame.CellHeightM);
         foreach (var s in road.Segments())
         {
+            if (s.ToStationM < fromStationM || s.FromStationM > toStationM) continue;
             // A long oblique segment is searched in pieces, so that its box stays narrow.
             var pieces = Math.Max(1, (int)Math.Ceiling((s.ToStationM - s.FromStationM) / pieceM));
             for (var i = 0; i < pieces; i++)
             {
+                if (s.StationAt((i + 1.0) / pieces) < fromStationM || s.StationAt((double)i / pieces) > toStationM) continue;
                 Coordinate a = s.At((double)i / pieces), b = s.At((double)(i + 1) / pieces);
                 int top = Math.Max(frame.RowAt(Math.Max(a.Y, b.Y)) - 1, 0), bottom = Math.Min(frame.RowAt(Math.Min(a.Y, b.Y)) + 1, frame.Rows - 1);
                 int left = Math.Max(frame.ColumnAt(Math.Min(a.X, b.X)) - 1, 0), right = Math.Min(frame.ColumnAt(Math.Max(a.X, b.X)) + 1, frame.Columns - 1);
@@ -40,7 +43,7 @@ internal static class RoadMeetings
             }
         }
 
-        return [.. byCell.Values.OrderBy(m => m.StationM).ThenBy(m => m.Cell)];
+        return [.. byCell.Values.Where(m => m.StationM >= fromStationM && m.StationM <= toStationM).OrderBy(m => m.StationM).ThenBy(m => m.Cell)];
     }
 
     /// <summary>The meeting of a cell's step with a segment; null when they do not meet. Where they run together, the downstream end of the overlap.</summary>

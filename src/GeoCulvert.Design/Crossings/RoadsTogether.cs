@@ -13,7 +13,9 @@ internal static class RoadsTogether
     {
         if (roads.Count == 0) return [.. crossings];
         var index = new RoadIndex(roads);
-        var ofRoad = Enumerable.Range(0, crossings.Count).ToLookup(i => crossings[i].Road!);
+        var at = new Dictionary<(RoadAlignment, int), int>();
+        for (var i = 0; i < crossings.Count; i++)
+            foreach (var cell in crossings[i].MeetingCells) at.TryAdd((crossings[i].Road!, cell), i);
         var gone = new bool[crossings.Count];
         var merged = new List<Crossing>();
         for (var i = 0; i < crossings.Count; i++)
@@ -21,7 +23,14 @@ internal static class RoadsTogether
             if (gone[i]) continue;
             var whole = Whole(crossings[i], index, direction, accumulation, togetherM);
             foreach (var over in whole.Over.Where(o => !ReferenceEquals(o.Road, crossings[i].Road)))
-                foreach (var k in ofRoad[over.Road].Where(k => Math.Abs(crossings[k].StationM!.Value - over.StationM) < 1e-6)) gone[k] = k > i;
+            {
+                if (!at.TryGetValue((over.Road, over.Cell), out var k)) continue;
+                if (k > i) gone[k] = true;
+                // The uppermost road knows all arms of its stream.
+                if (ReferenceEquals(over, whole.Over[0]))
+                    whole = whole with { OutletCell = crossings[k].OutletCell, OtherArms = crossings[k].OtherArms, AccumulationCells = crossings[k].AccumulationCells };
+            }
+
             merged.Add(whole);
         }
 
@@ -37,7 +46,7 @@ internal static class RoadsTogether
         if (up.Count + down.Count == 0) return crossing;
         up.Reverse();
         var whole = crossing with { Over = [.. up, .. crossing.Over, .. down] };
-        return cell == crossing.OutletCell ? whole : whole with { OutletCell = cell, WatershedCell = cell, AccumulationCells = accumulation.Cells[cell] };
+        return cell == crossing.OutletCell ? whole : whole with { OutletCell = cell, OtherArms = [], AccumulationCells = accumulation.Cells[cell] };
     }
 
     private static List<RoadOver> Downstream(Crossing crossing, RoadIndex index, Grid<byte> direction, double togetherM)
@@ -51,7 +60,7 @@ internal static class RoadsTogether
             {
                 var here = alongM + FlowSteps.Centre(frame, cell).Distance(meeting.Point);
                 if (IsKnown(index.Roads[road], crossing, found) || here < 0 || here - (index.Roads[road].WidthM / 2) - shoulderM > togetherM) continue;
-                found.Add(new(index.Roads[road], meeting.StationM, here));
+                found.Add(new(index.Roads[road], meeting.StationM, here, cell));
                 shoulderM = here + (index.Roads[road].WidthM / 2);
             }
 
@@ -75,7 +84,7 @@ internal static class RoadsTogether
             {
                 var here = alongM - FlowSteps.Centre(frame, cell).Distance(meeting.Point);
                 if (IsKnown(index.Roads[road], crossing, found) || here <= 0 || here - (index.Roads[road].WidthM / 2) - shoulderM > togetherM) continue;
-                found.Add(new(index.Roads[road], meeting.StationM, -here));
+                found.Add(new(index.Roads[road], meeting.StationM, -here, cell));
                 (shoulderM, outlet) = (here + (index.Roads[road].WidthM / 2), cell);
             }
 

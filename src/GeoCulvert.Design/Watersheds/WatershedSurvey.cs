@@ -39,17 +39,22 @@ public static class WatershedSurvey
     {
         ArgumentNullException.ThrowIfNull(terrain);
         ArgumentNullException.ThrowIfNull(crossings);
-        var cells = crossings.Select(c => c.WatershedCell).Distinct().ToArray();
+        var cells = crossings.Select(c => c.OutletCell).Concat(crossings.SelectMany(c => c.OtherArms)).Distinct().ToArray();
+        var outletOf = cells.Select((cell, k) => (cell, k)).ToDictionary(p => p.cell, p => p.k);
+        var first = Enumerable.Range(0, cells.Length).ToArray();
+        foreach (var c in crossings)
+            foreach (var arm in c.OtherArms.Where(a => first[outletOf[a]] == outletOf[a] && crossings.All(o => o.OutletCell != a))) first[outletOf[arm]] = outletOf[c.OutletCell];
         var labelling = WatershedLabels.Label(terrain.Direction, cells);
+        var parent = JoinedOutlets.Join(labelling.Labels, labelling.Parent, first);
         var paths = LongestFlowPath.Trace(terrain.Direction, cells);
+        int[] Longest(int k) => Enumerable.Range(0, cells.Length).Where(a => first[a] == k).Select(a => paths[a]).MaxBy(p => FlowPath.Of(p, terrain.Elevation).LengthM)!;
         var depth = new Grid<float>(terrain.Elevation.Frame);
         for (var i = 0; i < depth.Cells.Length; i++) depth.Cells[i] = terrain.Filled.Surface.Cells[i] - terrain.Elevation.Cells[i];
-        var byOutlet = Survey(labelling.Labels, labelling.Parent, terrain.Elevation, k => paths[k], filledDepthM: depth, settings: settings);
-        var outletOf = cells.Select((cell, k) => (cell, k)).ToDictionary(p => p.cell, p => p.k);
+        var byOutlet = Survey(labelling.Labels, parent, terrain.Elevation, k => crossings.Count == cells.Length || first[k] != k ? paths[k] : Longest(k), filledDepthM: depth, settings: settings);
         return new(
             labelling.Labels,
-            new OutletTree(labelling.Parent),
-            [.. crossings.Select(c => At(byOutlet[outletOf[c.WatershedCell]], c.Id))]);
+            new OutletTree(parent),
+            [.. crossings.Select(c => At(byOutlet[outletOf[c.OutletCell]], c.Id))]);
     }
 
     /// <summary>Surveys local and total watersheds of all outlets.</summary>

@@ -71,10 +71,9 @@ public class CrossingFinderTests
         var braid = HandGrid.Directions(10, "525255", "525255", "525255", "562455", "552555");
         var crossing = Assert.Single(Find(braid, 2, Road("R", (0, 30), (60, 30))).Crossings);
         Assert.Equal(2, crossing.MeetingCount);
-        // The watershed ends where the arms join, in the fourth row, and holds both.
-        var join = crossing.WatershedCell;
-        Assert.Equal(3, join / 6);
-        Assert.True(crossing.AccumulationCells >= 6, $"{crossing.AccumulationCells} cells");
+        // Two cells of each arm above the road.
+        Assert.Equal(4, crossing.AccumulationCells);
+        Assert.Single(crossing.OtherArms);
         // The same arms with the distance set below their spacing: two.
         Assert.Equal(2, CrossingFinder.Find([Road("R", (0, 30), (60, 30))], braid, HandGrid.Accumulation(braid), 2, new() { SameCrossingM = 15 }).Crossings.Count);
     }
