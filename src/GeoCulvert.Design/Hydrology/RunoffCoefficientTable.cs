@@ -43,7 +43,6 @@ public sealed record CompositeRunoffCoefficient(
 /// </summary>
 public sealed class RunoffCoefficientTable
 {
-    private static readonly string[] Groups = ["A", "B", "C", "D"];
     private readonly Dictionary<string, (string Name, string LandUse, double?[] C, string Origin)> _covers = new(StringComparer.OrdinalIgnoreCase);
     private readonly Dictionary<(string LandUse, string Group), List<(double BelowPct, double Low, double High, string Origin)>> _bySlope = [];
 
@@ -54,7 +53,7 @@ public sealed class RunoffCoefficientTable
         {
             try
             {
-                var values = Groups.Select(g => Coefficient(landCover, row, "C_" + g, row.NumberOrNull("C_" + g))).ToArray();
+                var values = SoilGroups.All.Select(g => Coefficient(landCover, row, "C_" + g, row.NumberOrNull("C_" + g))).ToArray();
                 if (!_covers.TryAdd(row.Text("cover_id"), (row.Text("name"), landCover.Has("land_use") ? row.Text("land_use") : "", values, $"{landCover.Name} line {row.Line}")))
                     throw new InputException($"{landCover.Name} line {row.Line}", $"cover '{row.Text("cover_id")}' a second time", "each cover once");
             }
@@ -130,7 +129,7 @@ public sealed class RunoffCoefficientTable
 
     private WeightedCover Line(CoverArea part)
     {
-        var group = Group(part.SoilGroup) ?? Group(DefaultSoilGroup);
+        var group = SoilGroups.Letter(part.SoilGroup, Dual) ?? SoilGroups.Letter(DefaultSoilGroup, Dual);
         if (part.CoverId is null || !_covers.TryGetValue(part.CoverId, out var cover))
             return new(part.CoverId is null ? "cover unknown" : $"cover {part.CoverId}", group, part.AreaM2, null, null, "");
         if (group is not null && part.SlopeMPerM is { } slope && _bySlope.TryGetValue((cover.LandUse.ToUpperInvariant(), group), out var list))
@@ -140,15 +139,8 @@ public sealed class RunoffCoefficientTable
             return new(cover.Name, group, part.AreaM2, row.Low, row.High, row.Origin);
         }
         // Water and the like shed the same on every soil, so their group need not be known.
-        var value = group is not null ? cover.C[Array.IndexOf(Groups, group)] : cover.C.Distinct().Count() == 1 ? cover.C[0] : null;
+        var value = group is not null ? cover.C[Array.IndexOf(SoilGroups.All, group)] : cover.C.Distinct().Count() == 1 ? cover.C[0] : null;
         return new(value is null ? $"{cover.Name}, soil group {group ?? "unknown"}" : cover.Name, group, part.AreaM2, value, null, cover.Origin);
-    }
-
-    private string? Group(string? text)
-    {
-        var letters = (text ?? "").Trim().ToUpperInvariant().Split('/', StringSplitOptions.TrimEntries);
-        var letter = letters.Length == 2 && Dual == DualSoilGroup.Undrained ? letters[1] : letters[0];
-        return letters.Length <= 2 && letters.All(Groups.Contains) ? letter : null;
     }
 
     private static double? Coefficient(PublishedTable table, TableRow row, string column, double? value) => value is null or (>= 0 and <= 1)
