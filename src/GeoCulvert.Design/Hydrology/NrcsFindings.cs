@@ -76,4 +76,10 @@ public static class NrcsFindings
         "curve-number-unconfirmed", Severity.Note,
         "Part of the curve number rests on rows of the table that were not compared with a print of TR-55.",
         "Compare those rows with table 2-2 of TR-55, or give the agency's table.");
+
+    /// <summary>The duration of excess is long.</summary>
+    public static readonly FindingCode DurationLong = new(
+        "excess-duration-long", Severity.Warning,
+        "The duration of excess rain is longer than a quarter of the time to peak, so the hydrograph is read too coarsely.",
+        "Give a shorter duration, or leave it to the rule.");
 }
