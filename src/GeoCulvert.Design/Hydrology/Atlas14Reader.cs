@@ -5,7 +5,8 @@ namespace GeoCulvert.Design.Hydrology;
 /// <summary>
 /// Reads the point precipitation frequency CSV of NOAA Atlas 14: a head that names unit, data type and series, then one block of
 /// durations by return periods, optionally two more with the bounds of the 90 % confidence interval, then footer lines.
-/// Lines are read one by one, so that a stray quote or a damaged degree sign in the head does no harm.
+/// Lines are read one by one, so that a stray quote or a damaged degree sign in the head does no harm. Files saved again with semicolons or tabs,
+/// with decimal commas, are read too.
 /// </summary>
 internal static class Atlas14Reader
 {
@@ -40,6 +41,7 @@ internal static class Atlas14Reader
             if (line.Length == 0) continue;
             if (line.StartsWith('<')) throw new InputException($"{name} line {number}", "a web page", "the CSV file of NOAA Atlas 14");
             if (line.StartsWith(Title, StringComparison.OrdinalIgnoreCase)) (open, kind) = (null, line[Title.Length..].ToLowerInvariant());
+            else if (BoundOf(line) is { } bound) (open, kind) = (null, bound);
             else if (line.StartsWith("Point precipitation frequency", StringComparison.OrdinalIgnoreCase)) unit = (line, number);
             else if (line.StartsWith("Data type:", StringComparison.OrdinalIgnoreCase)) type = (line, number);
             else if (line.StartsWith("Time series type:", StringComparison.OrdinalIgnoreCase)) series = (line, number);
@@ -79,17 +81,42 @@ internal static class Atlas14Reader
         && (cells[0].Trim().StartsWith("by duration", StringComparison.OrdinalIgnoreCase)
             || (cells[0].Trim().Length == 0 && cells[1].Trim().Length > 0));
 
+    // "UPPER BOUND OF 90% CONFIDENCE INTERVAL" and the like, standing alone above a block.
+    private static string? BoundOf(string line)
+    {
+        if (!line.Contains("confidence", StringComparison.OrdinalIgnoreCase)) return null;
+        bool lower = line.Contains("lower", StringComparison.OrdinalIgnoreCase), upper = line.Contains("upper", StringComparison.OrdinalIgnoreCase);
+        return lower == upper ? null : lower ? "lower" : "upper";
+    }
+
     private static List<(int Number, List<string> Cells)> Lines(string text)
     {
         var result = new List<(int, List<string>)>();
         var lines = text.TrimStart('\uFEFF').Split('\n');
+        var separator = SeparatorOf(lines);
         for (var i = 0; i < lines.Length; i++)
         {
-            var records = CsvText.Read(lines[i].TrimEnd('\r'));
-            if (records.Count > 0) result.Add((i + 1, RainfallCells.WithoutTrailingBlanks(records[0].Fields)));
+            var records = CsvText.Read(lines[i].TrimEnd('\r'), separator);
+            if (records.Count == 0) continue;
+            var cells = RainfallCells.WithoutTrailingBlanks(records[0].Fields);
+            result.Add((i + 1, separator == ',' ? cells : [.. cells.Select(PointForComma)]));
         }
         return result;
     }
+
+    // The sign after the first duration of the table; the head may hold any sign.
+    private static char SeparatorOf(string[] lines)
+    {
+        foreach (var line in lines)
+        {
+            var start = line.TrimStart(' ', '"');
+            if (start.IndexOfAny([',', ';', '\t']) is var at && at > 0 && RainfallCells.DurationMin(start[..at].Trim('"', ' ')) is not null) return start[at];
+        }
+        return ',';
+    }
+
+    private static string PointForComma(string cell) =>
+        cell.Count(c => c == ',') == 1 && cell.All(c => char.IsAsciiDigit(c) || c is ',' or '-' or ' ') ? cell.Replace(',', '.') : cell;
 
     private static RainfallMeasure MeasureOf(string name, (string Text, int Line)? unit, (string Text, int Line)? type, RainfallMeasure? stated)
     {

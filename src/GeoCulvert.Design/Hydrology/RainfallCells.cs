@@ -46,9 +46,9 @@ internal sealed class RainfallCells(string name, IReadOnlyList<double> returnPer
             var cell = raw.Trim().ToLowerInvariant();
             var text = cell.Replace("years", "", StringComparison.Ordinal).Replace("year", "", StringComparison.Ordinal)
                 .Replace("yr", "", StringComparison.Ordinal).Trim(' ', '-', '_');
-            // Tables of annual maxima head their columns with the annual chance, 1/25.
-            var value = text.StartsWith("1/", StringComparison.Ordinal) ? Number(text[2..]) : Number(text);
-            if (value is not { } t || !(t > 0)) throw new InputException($"{name} line {line}", $"'{raw.Trim()}' in the heading", expected);
+            // Tables of annual maxima head their columns with the annual chance, 1/25 or 4%.
+            var value = text.StartsWith("1/", StringComparison.Ordinal) ? Number(text[2..]) : text.EndsWith('%') ? 100 / Number(text[..^1]) : Number(text);
+            if (value is not { } t || !(t > 0) || !double.IsFinite(t)) throw new InputException($"{name} line {line}", $"'{raw.Trim()}' in the heading", expected);
             if (periods.Count > 0 && t <= periods[^1])
                 throw new InputException($"{name} line {line}", $"{t:G6} after {periods[^1]:G6} in the heading", expected);
             periods.Add(t);
