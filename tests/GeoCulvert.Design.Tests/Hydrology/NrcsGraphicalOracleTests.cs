@@ -72,6 +72,20 @@ public class NrcsGraphicalOracleTests
         Assert.Equal(12.09, flow.FlowM3PerS!.Value, 0.005 * 12.09);
     }
 
+    // A filled worksheet 4 of TR-55 in a report filed in Colorado (DRMS document 763865, page 13): CN 94, Tc 0.02 h, type II, 25-year storm: Ia 0.13 in,
+    // Ia/P 0.072 (so P is 1.8 in), qu 1000 csm/in read at the end of the chart, Q 1.21 in. Both Tc and Ia/P lie outside the chart, as here.
+    [Fact]
+    public void FiledWorksheetBeyondTheChart()
+    {
+        var flow = new NrcsGraphicalMethod(NrcsStormType.II) { GivenDepthMm = 1.8 * 25.4 }.Compute(new("x", MileM2) { CurveNumber = 94 }, 25, new(TimeOfConcentrationMin: 1.2));
+        double Step(string name) => flow.Steps.Single(s => s.Name == name).Value;
+        Assert.Equal(0.13, Step("initial_abstraction_mm") / 25.4, 0.005);
+        Assert.Equal(0.072, Step("initial_abstraction_over_rainfall"), 0.0015);
+        Assert.Equal(1.21, Step("runoff_depth_mm") / 25.4, 0.005);
+        Assert.Equal(1000, Step("unit_peak"), 0.02 * 1000);
+        Assert.Equal(["graphical-abstraction-outside-range", "graphical-time-outside-range"], flow.Findings.Select(f => f.Code));
+    }
+
     // HEC-22 and HDS-2 print the SI form with 0.000431 (m3/s per km2 and mm); by hand 0.0283168 / (2.589988 x 25.4) = 0.00043045,
     // so the print is one unit high in its last digit.
     [Fact]
