@@ -11,6 +11,7 @@ var root = new RootCommand(
     NewCommand.Create(),
     SizeCommand.Create(),
     RateCommand.Create(),
+    FlowCommand.Create(),
     Shell.Quiet,
     Shell.JsonLog,
 };
