@@ -13,6 +13,9 @@ public sealed record DesignFlow(
 {
     /// <summary>The design value, m3/s; null when the chosen method gave none.</summary>
     public double? FlowM3PerS => Chosen.FlowM3PerS;
+
+    /// <summary>The chosen method's flow with 20 % less and more time of concentration; null when there is no time.</summary>
+    public TimeSensitivity? TimeSensitivity { get; init; }
 }
 
 /// <summary>Rule that takes the design value out of several methods: the named one, never another in its place.</summary>
@@ -25,7 +28,11 @@ public sealed record DesignFlowRule(string Method, double DifferenceFactor = 2)
     public IReadOnlyList<DesignFlow> Compute(
         Catchment catchment, IReadOnlyList<IPeakFlowMethod> methods, IReadOnlyList<double> returnPeriodsYr, PeakFlowContext context)
     {
-        var flows = returnPeriodsYr.Select(t => Choose([.. methods.Select(m => m.Compute(catchment, t, context))])).ToArray();
+        var named = methods.FirstOrDefault(m => m.Name == Method);
+        var flows = returnPeriodsYr.Select(t => Choose([.. methods.Select(m => m.Compute(catchment, t, context))]) with
+        {
+            TimeSensitivity = named is null ? null : TimeSensitivity.Of(named, catchment, t, context),
+        }).ToArray();
         for (var k = 0; k < flows.Length; k++)
         {
             // Return periods may be listed in any order: compare with the next shorter one.

@@ -136,6 +136,10 @@ public class TimeMethodsInvariantTests
         Assert.Empty(s.Findings);
         Assert.NotEmpty(TimeSensitivity.Of(new RationalMethod(), catchment, 25, new(Table, 60), notedShare: 0.01)!.Findings);
         Assert.Null(TimeSensitivity.Of(new RationalMethod(), catchment, 25, new(Table)));
+        var design = new DesignFlowRule("rational").Compute(catchment, [new RationalMethod()], [10, 25], new(Table, 60));
+        Assert.Equal([10.0, 25.0], design.Select(d => d.TimeSensitivity!.ReturnPeriodYr));
+        Assert.Equal(s.ShorterTimeFlowM3PerS, design[1].TimeSensitivity!.ShorterTimeFlowM3PerS);
+        Assert.Equal(design[1].FlowM3PerS, design[1].TimeSensitivity!.FlowM3PerS);
     }
 
     [Fact]
