@@ -34,6 +34,22 @@ public sealed class FlowPath
     /// <summary>Fall from end to end by length, m/m; null for a path of one cell or without elevations.</summary>
     public double? EndToEndSlopeMPerM => SlopeBetween(0, 1);
 
+    /// <summary>
+    /// Slope of the straight line from the outlet that has as much area under it as the profile has above the outlet's elevation: 2 A / L^2,
+    /// A by trapezoids between cells, m/m; null for a path of one cell or without elevations.
+    /// </summary>
+    public double? EqualAreaSlopeMPerM
+    {
+        get
+        {
+            if (!(LengthM > 0)) return null;
+            double area = 0, outlet = Profile[^1].ElevationM;
+            for (var i = 1; i < Profile.Count; i++)
+                area += (Profile[i].DistanceM - Profile[i - 1].DistanceM) * (((Profile[i].ElevationM + Profile[i - 1].ElevationM) / 2) - outlet);
+            return double.IsNaN(area) ? null : 2 * area / (LengthM * LengthM);
+        }
+    }
+
     /// <summary>Elevation at a share of the length above the outlet, m; linear between cells.</summary>
     public double ElevationAboveOutletM(double share)
     {

@@ -33,6 +33,9 @@ public sealed record WatershedCharacteristics(double AreaM2, long Cells, Watersh
     /// <summary>Square of the longest flow path by the area, no unit; null without a path. 1 is compact, 10 is long and narrow.</summary>
     public double? ShapeFactor => LongestFlowPath is { LengthM: > 0 } path && AreaM2 > 0 ? path.LengthM * path.LengthM / AreaM2 : null;
 
+    /// <summary>Share of the cells that conditioning raised, 0-1: closed depressions, real or not; null when not known.</summary>
+    public double? FilledShare { get; init; }
+
     /// <summary>Share of the perimeter beyond which there is no terrain, 0-1.</summary>
     public double EdgeContactShare => Outline.EdgeContactShare;
 }

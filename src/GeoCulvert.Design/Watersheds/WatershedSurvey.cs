@@ -42,15 +42,18 @@ public static class WatershedSurvey
         var cells = crossings.Select(c => c.OutletCell).Concat(crossings.SelectMany(c => c.OtherArms)).Distinct().ToArray();
         var outletOf = cells.Select((cell, k) => (cell, k)).ToDictionary(p => p.cell, p => p.k);
         var first = Enumerable.Range(0, cells.Length).ToArray();
+        var main = crossings.Select(c => c.OutletCell).ToHashSet();
         foreach (var c in crossings)
-            foreach (var arm in c.OtherArms.Where(a => first[outletOf[a]] == outletOf[a] && crossings.All(o => o.OutletCell != a))) first[outletOf[arm]] = outletOf[c.OutletCell];
+            foreach (var arm in c.OtherArms.Where(a => first[outletOf[a]] == outletOf[a] && !main.Contains(a))) first[outletOf[arm]] = outletOf[c.OutletCell];
         var labelling = WatershedLabels.Label(terrain.Direction, cells);
         var parent = JoinedOutlets.Join(labelling.Labels, labelling.Parent, first);
         var paths = LongestFlowPath.Trace(terrain.Direction, cells);
-        int[] Longest(int k) => Enumerable.Range(0, cells.Length).Where(a => first[a] == k).Select(a => paths[a]).MaxBy(p => FlowPath.Of(p, terrain.Elevation).LengthM)!;
-        var depth = new Grid<float>(terrain.Elevation.Frame);
-        for (var i = 0; i < depth.Cells.Length; i++) depth.Cells[i] = terrain.Filled.Surface.Cells[i] - terrain.Elevation.Cells[i];
-        var byOutlet = Survey(labelling.Labels, parent, terrain.Elevation, k => crossings.Count == cells.Length || first[k] != k ? paths[k] : Longest(k), filledDepthM: depth, settings: settings);
+        var localPaths = LongestFlowPath.Trace(Cut(terrain.Direction, cells), cells);
+        float[] filled = terrain.Filled.Surface.Cells, ground = terrain.Elevation.Cells;
+        int[] Longest(IReadOnlyList<int[]> of, int k) => crossings.Count == cells.Length || first[k] != k
+            ? of[k]
+            : Enumerable.Range(0, cells.Length).Where(a => first[a] == k).Select(a => of[a]).MaxBy(p => FlowPath.Of(p, terrain.Elevation).LengthM)!;
+        var byOutlet = Survey(labelling.Labels, parent, terrain.Elevation, k => Longest(paths, k), k => Longest(localPaths, k), cell => filled[cell] > ground[cell], settings);
         return new(
             labelling.Labels,
             new OutletTree(parent),
@@ -63,7 +66,7 @@ public static class WatershedSurvey
     /// <param name="elevation">The untouched terrain; NaN where there is none.</param>
     /// <param name="totalPath">Cells of the longest flow path of an outlet's total watershed, divide first; null or empty for none.</param>
     /// <param name="localPath">The same within the local watershed; null to leave it out.</param>
-    /// <param name="filledDepthM">Depth to which conditioning raised each cell, m; null when not known.</param>
+    /// <param name="isFilled">Whether conditioning raised a cell (row-major index); null when not known.</param>
     /// <param name="settings">Settings; null for the defaults.</param>
     public static IReadOnlyList<Watershed> Survey(
         Grid<int> labels,
@@ -71,7 +74,7 @@ public static class WatershedSurvey
         Grid<float> elevation,
         Func<int, IReadOnlyList<int>?>? totalPath = null,
         Func<int, IReadOnlyList<int>?>? localPath = null,
-        Grid<float>? filledDepthM = null,
+        Func<int, bool>? isFilled = null,
         WatershedSettings? settings = null)
     {
         ArgumentNullException.ThrowIfNull(labels);
@@ -84,13 +87,13 @@ public static class WatershedSurvey
         var slopes = ZonalSums.Of(labels, tree, cell => GroundSlope.At(elevation, cell));
         var columns = ZonalSums.Of(labels, tree, cell => cell % frame.Columns);
         var rows = ZonalSums.Of(labels, tree, cell => cell / frame.Columns);
-        var filled = filledDepthM is null ? null : ZonalSums.Of(labels, tree, cell => filledDepthM.Cells[cell] > 0 ? 1 : 0);
+        var filled = isFilled is null ? null : ZonalSums.Of(labels, tree, cell => isFilled(cell) ? 1 : 0);
         var watersheds = new Watershed[tree.Count];
         for (var k = 0; k < tree.Count; k++)
         {
             var local = Characteristics(b => b.Local[k], outlines.Local[k], localPath?.Invoke(k));
             var total = Characteristics(b => b.Total[k], outlines.Total[k], totalPath?.Invoke(k));
-            watersheds[k] = new(k, tree.Parent(k), local, total, Doubts(total, filled?.Total[k].MeanOrNull, settings));
+            watersheds[k] = new(k, tree.Parent(k), local, total, Doubts(total, settings));
         }
 
         return watersheds;
@@ -109,21 +112,30 @@ public static class WatershedSurvey
                 LeastElevationM = some ? height.Least : null,
                 LargestElevationM = some ? height.Most : null,
                 MeanBasinSlopeMPerM = of(slopes).MeanOrNull,
+                FilledShare = filled is null ? null : of(filled).MeanOrNull,
             };
         }
     }
 
+    /// <summary>Directions that end at every outlet: what is upstream of an outlet is then its local watershed.</summary>
+    private static Grid<byte> Cut(Grid<byte> direction, int[] outletCells)
+    {
+        var cut = new Grid<byte>(direction.Frame, (byte[])direction.Cells.Clone());
+        foreach (var cell in outletCells) cut.Cells[cell] = 0;
+        return cut;
+    }
+
     private static Watershed At(Watershed watershed, string id) => watershed with { Findings = [.. watershed.Findings.Select(f => f.At(id))] };
 
-    private static List<Finding> Doubts(WatershedCharacteristics total, double? filledShare, WatershedSettings settings)
+    private static List<Finding> Doubts(WatershedCharacteristics total, WatershedSettings settings)
     {
         var doubts = new List<Finding>();
         if (total.Outline.EdgeContactM > 0 && total.EdgeContactShare > settings.EdgeContactLimitShare)
             doubts.Add(WatershedFindings.EdgeContact.With(
                 $"{total.EdgeContactShare * 100:0.#} % of the boundary ({total.Outline.EdgeContactM:0} m) has no terrain beyond it", total.EdgeContactShare, settings.EdgeContactLimitShare));
         if (total.Cells < settings.FewCells) doubts.Add(WatershedFindings.Tiny.With($"{total.Cells} cells", total.Cells, settings.FewCells));
-        if (filledShare > settings.StorageLimitShare)
-            doubts.Add(WatershedFindings.Storage.With($"{filledShare.Value * 100:0.#} % of the cells lie in filled depressions", filledShare, settings.StorageLimitShare));
+        if (total.FilledShare > settings.StorageLimitShare)
+            doubts.Add(WatershedFindings.Storage.With($"{total.FilledShare.Value * 100:0.#} % of the cells lie in filled depressions", total.FilledShare, settings.StorageLimitShare));
         if (total.LongestFlowPath is { Slope1085MPerM: <= 0 and var slope })
             doubts.Add(WatershedFindings.FlowPathAdverse.With($"slope {slope:0.00000} m/m", slope, 0));
         return doubts;

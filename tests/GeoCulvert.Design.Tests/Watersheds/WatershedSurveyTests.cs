@@ -48,7 +48,7 @@ public class WatershedSurveyTests
         // Four corners, the closing point, and the two ends of the line between the parts (y = 30), which all three outlines share.
         var polygon = Survey()[1].Total.Outline.Polygon;
         Assert.Equal(7, polygon.NumPoints);
-        Assert.Equal(2, polygon.Coordinates.Count(c => c.Y == 30));
+        Assert.Equal(2, polygon.Coordinates.Distinct().Count(c => c.Y == 30));
     }
 
     [Fact]
@@ -73,7 +73,22 @@ public class WatershedSurveyTests
         Assert.Equal([400.0, 400.0, 200.0], survey.Select(w => w.Total.AreaM2));
         Assert.Equal([200.0, 200.0, 200.0], survey.Select(w => w.Local.AreaM2));
         Assert.Equal(30, survey[0].Total.LongestFlowPath!.LengthM, 6);
+        // Local paths stop at the crossing above: two cells of C's column for A, and for C from the rim down.
+        Assert.Equal([10.0, 10.0, 10.0], survey.Select(w => w.Local.LongestFlowPath!.LengthM));
         Assert.All(survey[1].Findings, f => Assert.Equal("B", f.CrossingId));
         Assert.Contains(survey[2].Findings, f => f.Code == "watershed-edge-contact");
+    }
+
+    [Fact]
+    public void TheShareOfFilledCells()
+    {
+        // A gully of ten cells between walls, falling south, with two cells dug out: they are raised to the cell below.
+        float[] gully = [20, 19, 18, 5, 6, 15, 14, 13, 12, 11];
+        var elevation = new Grid<float>(new GridFrame(3, 10, 0, 100, 10, 10), [.. gully.SelectMany(z => new[] { 50, z, 50 })]);
+        var terrain = Drainage.Solve(elevation, cancel: TestContext.Current.CancellationToken);
+        var crossing = new Crossing("A", CrossingOrigin.Found, new Coordinate(15, 15), 25, 0);
+        var total = WatershedSurvey.Survey(terrain, [crossing]).Watersheds[0].Total;
+        Assert.True(total.Cells >= 7);
+        Assert.Equal(2, total.FilledShare!.Value * total.Cells, 9);
     }
 }
