@@ -4,146 +4,173 @@ using NetTopologySuite.Geometries;
 namespace GeoCulvert.Design.Watersheds;
 
 /// <summary>
-/// Joins the edges of one watershed to rings. Where four edges meet (cells touching at a corner) the way turns left, which stays with the
-/// same cell; a ring that comes back to a corner is cut there. So rings are simple, shells run anticlockwise and holes clockwise.
-/// A corner is kept where the ring turns, or where three or more labels meet, so that neighbours share their vertices.
+/// Joins the arcs of one watershed to rings, its inside on the left. Where two ways go on (cells touching at a corner) the way turns left,
+/// which stays with the same cell; a ring that comes back to a node is cut there. So rings are simple, shells run anticlockwise and holes
+/// clockwise. Not for use by several threads at once.
 /// </summary>
-internal static class RingStitching
+internal sealed class RingStitching
 {
-    /// <summary>Polygon of sorted edge codes.</summary>
-    public static Geometry Polygon(ReadOnlySpan<long> edges, Grid<int> labels)
+    private readonly BoundaryArcs _boundary;
+    private readonly ArcShapes _shapes;
+
+    // The arcs that leave a node in the watershed at hand: two at most, each arc * 2 + (1 when it is walked backward); -1 for none.
+    private readonly int[] _firstOut;
+    private readonly int[] _secondOut;
+    private readonly int[] _placeInWay;
+
+    public RingStitching(BoundaryArcs boundary, ArcShapes shapes)
     {
-        var shells = new List<Ring>();
-        var holes = new List<Ring>();
-        var used = new bool[edges.Length];
-        for (var first = 0; first < edges.Length; first++)
+        (_boundary, _shapes) = (boundary, shapes);
+        (_firstOut, _secondOut, _placeInWay) = (new int[boundary.NodeCount], new int[boundary.NodeCount], new int[boundary.NodeCount]);
+        Array.Fill(_firstOut, -1);
+        Array.Fill(_secondOut, -1);
+        Array.Fill(_placeInWay, -1);
+    }
+
+    /// <summary>Polygon of directed arcs; of several parts the largest first.</summary>
+    public Geometry Polygon(ReadOnlySpan<int> ways)
+    {
+        var rings = new List<Ring>();
+        foreach (var way in ways)
         {
-            if (used[first]) continue;
-            foreach (var corners in Rings(edges, used, first, labels.Frame.Columns + 1))
+            if (Arc(way).IsClosed)
             {
-                var ring = new Ring(corners, labels);
-                (ring.AreaCells > 0 ? shells : holes).Add(ring);
+                rings.Add(new Ring([way], this));
+                continue;
             }
+
+            var node = StartNode(way);
+            if (_firstOut[node] < 0) _firstOut[node] = way;
+            else _secondOut[node] = way;
         }
 
+        foreach (var way in ways)
+            if (!Arc(way).IsClosed && (_firstOut[StartNode(way)] == way || _secondOut[StartNode(way)] == way)) Follow(way, rings);
+
+        List<Ring> shells = [.. rings.Where(r => r.TwiceArea > 0).OrderByDescending(r => r.TwiceArea)], holes = [.. rings.Where(r => r.TwiceArea < 0)];
         var polygons = shells.Select(s => new Polygon(s.Line, [.. HolesOf(s, shells, holes).Select(h => h.Line)])).ToArray();
         return polygons.Length == 1 ? polygons[0] : new MultiPolygon(polygons);
     }
 
-    /// <summary>Follows edges from one of them until back at it; cuts off each part that closes on the way.</summary>
-    private static List<List<long>> Rings(ReadOnlySpan<long> edges, bool[] used, int first, long across)
+    /// <summary>Follows arcs from one of them until back at it; cuts off each part that closes on the way.</summary>
+    private void Follow(int first, List<Ring> rings)
     {
-        var rings = new List<List<long>>();
-        var way = new List<long>();
-        var placeOf = new Dictionary<long, int>();
-        var i = first;
-        while (true)
+        var way = new List<int>();
+        for (var next = first; next >= 0;)
         {
-            used[i] = true;
-            long corner = edges[i] >> 2;
-            // Only a corner with two ways out can come twice; the codes of one corner lie side by side.
-            if ((i > 0 && edges[i - 1] >> 2 == corner) || (i + 1 < edges.Length && edges[i + 1] >> 2 == corner))
-            {
-                if (placeOf.TryGetValue(corner, out var place))
-                {
-                    rings.Add(way.GetRange(place, way.Count - place));
-                    for (var k = place; k < way.Count; k++) placeOf.Remove(way[k]);
-                    way.RemoveRange(place, way.Count - place);
-                }
-
-                placeOf[corner] = way.Count;
-            }
-
-            way.Add(corner);
-            var direction = (int)(edges[i] & 3);
-            var next = corner + direction switch { 0 => 1, 1 => -across, 2 => -1, _ => across };
-            i = Outgoing(edges, used, next, direction);
-            if (i < 0) break;
+            var node = StartNode(next);
+            if (_placeInWay[node] >= 0) CutOff(_placeInWay[node], way, rings);
+            _placeInWay[node] = way.Count;
+            way.Add(next);
+            if (_firstOut[node] == next) _firstOut[node] = -1;
+            else _secondOut[node] = -1;
+            next = Onward(next);
         }
 
-        rings.Add(way);
-        return rings;
+        CutOff(0, way, rings);
     }
 
-    /// <summary>The unused edge out of a corner, the leftmost first; -1 when the way is closed.</summary>
-    private static int Outgoing(ReadOnlySpan<long> edges, bool[] used, long corner, int direction)
+    private void CutOff(int from, List<int> way, List<Ring> rings)
     {
-        foreach (var turn in (ReadOnlySpan<int>)[1, 0, 3])
-        {
-            var i = edges.BinarySearch((corner << 2) + ((direction + turn) & 3));
-            if (i >= 0 && !used[i]) return i;
-        }
-
-        return -1;
+        rings.Add(new Ring([.. way[from..]], this));
+        for (var i = from; i < way.Count; i++) _placeInWay[StartNode(way[i])] = -1;
+        way.RemoveRange(from, way.Count - from);
     }
+
+    /// <summary>The arc that goes on from the end of one, the leftmost first; -1 when the way is closed.</summary>
+    private int Onward(int way)
+    {
+        var node = EndNode(way);
+        int a = _firstOut[node], b = _secondOut[node];
+        if (a < 0 || b < 0) return Math.Max(a, b);
+        var direction = EndDirection(way);
+        return Leftness(direction, StartDirection(a)) > Leftness(direction, StartDirection(b)) ? a : b;
+    }
+
+    // Left 2, straight 1, right 0: turns of 1, 0 and 3 quarters.
+    private static int Leftness(int from, int to) => ((to - from) & 3) switch { 1 => 2, 0 => 1, _ => 0 };
 
     private static IEnumerable<Ring> HolesOf(Ring shell, List<Ring> shells, List<Ring> holes)
     {
         if (shells.Count == 1) return holes;
-        return holes.Where(h => ReferenceEquals(shell, shells.Where(s => s.Contains(h)).MinBy(s => s.AreaCells)));
+        return holes.Where(h => ReferenceEquals(shell, shells.Where(s => s.Contains(h)).MinBy(s => s.TwiceArea)));
     }
+
+    private ref readonly BoundaryArc Arc(int way) => ref _boundary.Arcs[way >> 1];
+
+    private int StartNode(int way) => (way & 1) == 0 ? Arc(way).StartNode : Arc(way).EndNode;
+
+    private int EndNode(int way) => (way & 1) == 0 ? Arc(way).EndNode : Arc(way).StartNode;
+
+    private int StartDirection(int way) => (way & 1) == 0 ? Arc(way).StartDirection : (Arc(way).EndDirection + 2) & 3;
+
+    private int EndDirection(int way) => (way & 1) == 0 ? Arc(way).EndDirection : (Arc(way).StartDirection + 2) & 3;
 
     private sealed class Ring
     {
-        private readonly List<long> _corners;
-        private readonly long _across;
+        private readonly int[] _ways;
+        private readonly RingStitching _of;
+        private readonly int _west = int.MaxValue;
+        private readonly int _east = int.MinValue;
+        private readonly int _top = int.MaxValue;
+        private readonly int _bottom = int.MinValue;
 
-        public Ring(List<long> corners, Grid<int> labels)
+        public Ring(int[] ways, RingStitching of)
         {
-            (_corners, _across) = (corners, labels.Frame.Columns + 1L);
-            var area = 0L;
-            for (int i = 0, j = corners.Count - 1; i < corners.Count; j = i++)
-                area += (X(j) * Y(i)) - (X(i) * Y(j));
-            AreaCells = area / 2;
-            Line = new LinearRing(Coordinates(labels));
+            (_ways, _of) = (ways, of);
+            foreach (var way in ways)
+            {
+                TwiceArea += (way & 1) == 0 ? of.Arc(way).TwiceArea : -of.Arc(way).TwiceArea;
+                foreach (var (column, row) in of._boundary.Points(of.Arc(way)))
+                {
+                    (_west, _east) = (Math.Min(_west, column), Math.Max(_east, column));
+                    (_top, _bottom) = (Math.Min(_top, row), Math.Max(_bottom, row));
+                }
+            }
+
+            Line = of._shapes.Ring(ways);
         }
 
-        /// <summary>Area in cells; negative for a hole.</summary>
-        public long AreaCells { get; }
+        /// <summary>Twice the area in cells, along the cell edges; negative for a hole.</summary>
+        public long TwiceArea { get; }
 
         public LinearRing Line { get; }
 
-        private long X(int i) => _corners[i] % _across;
-
-        // North is up: rows count downward.
-        private long Y(int i) => -(_corners[i] / _across);
-
         /// <summary>
-        /// Whether a hole lies in this shell: tested at the centre of a cell just inside the watershed along the hole's first edge,
-        /// which is in one shell only even where rings touch.
+        /// Whether a hole lies in this shell: tested at the centre of the cell just inside the watershed along the hole's first edge, which is
+        /// in one shell only even where rings touch.
         /// </summary>
         public bool Contains(Ring hole)
         {
-            double dx = hole.X(1) - hole.X(0), dy = hole.Y(1) - hole.Y(0);
-            double px = hole.X(0) + (dx / 2) - (dy / 2), py = hole.Y(0) + (dy / 2) + (dx / 2);
+            if (hole._west < _west || hole._east > _east || hole._top < _top || hole._bottom > _bottom) return false;
+            var (column, row) = hole.InnerCell();
             var inside = false;
-            for (int i = 0, j = _corners.Count - 1; i < _corners.Count; j = i++)
-                if (X(i) == X(j) && Y(i) > py != Y(j) > py && X(i) > px) inside = !inside;
+            foreach (var way in _ways)
+            {
+                var points = _of._boundary.Points(_of.Arc(way));
+                for (var i = 1; i < points.Length; i++)
+                {
+                    // A side east of the cell's centre that passes its row.
+                    if (points[i].Column != points[i - 1].Column || points[i].Column <= column) continue;
+                    if (points[i].Row > row != points[i - 1].Row > row) inside = !inside;
+                }
+            }
+
             return inside;
         }
 
-        private Coordinate[] Coordinates(Grid<int> labels)
+        private (int Column, int Row) InnerCell()
         {
-            var frame = labels.Frame;
-            var kept = new List<Coordinate>();
-            var n = _corners.Count;
-            for (var i = 0; i < n; i++)
+            var way = _ways[0];
+            var points = _of._boundary.Points(_of.Arc(way));
+            var (column, row) = (way & 1) == 0 ? points[0] : points[^1];
+            return _of.StartDirection(way) switch
             {
-                var straight = _corners[i] - _corners[(i + n - 1) % n] == _corners[(i + 1) % n] - _corners[i];
-                int row = (int)(_corners[i] / _across), column = (int)(_corners[i] % _across);
-                if (!straight || LabelsMeeting(labels, row, column) >= 3)
-                    kept.Add(new Coordinate(frame.West + (column * frame.CellWidthM), frame.North - (row * frame.CellHeightM)));
-            }
-
-            kept.Add(kept[0].Copy());
-            return [.. kept];
-        }
-
-        private static int LabelsMeeting(Grid<int> labels, int row, int column)
-        {
-            int At(int r, int c) => labels.Frame.Contains(r, c) ? labels[r, c] : -1;
-            int a = At(row - 1, column - 1), b = At(row - 1, column), c = At(row, column - 1), d = At(row, column);
-            return 1 + (b != a ? 1 : 0) + (c != a && c != b ? 1 : 0) + (d != a && d != b && d != c ? 1 : 0);
+                0 => (column, row - 1),
+                1 => (column - 1, row - 1),
+                2 => (column - 1, row),
+                _ => (column, row),
+            };
         }
     }
 }

@@ -19,9 +19,9 @@ public sealed record WatershedOutline(Geometry Polygon, double PerimeterM, doubl
 public sealed record WatershedOutlines(IReadOnlyList<WatershedOutline> Local, IReadOnlyList<WatershedOutline> Total);
 
 /// <summary>
-/// Traces the outlines of all labels in one pass over the grid. Every edge between two cells of different label is found once and handed to the
-/// watersheds that it bounds: for labels a and b these are the outlets from a down to where the two ways join, and from b likewise. The work
-/// is that of the pass and of the outlines themselves, however many there are and however deeply nested.
+/// Traces the outlines of all labels in one pass over the grid. Every line between two labels is found once and handed to the watersheds
+/// that it bounds: for labels a and b these are the outlets from a down to where the two ways join, and from b likewise. The work is that of
+/// the pass and of the outlines themselves, however many there are and however deeply nested.
 /// </summary>
 public static class WatershedPolygons
 {
@@ -34,53 +34,77 @@ public static class WatershedPolygons
     {
         ArgumentNullException.ThrowIfNull(labels);
         ArgumentNullException.ThrowIfNull(tree);
-        var edges = LabelEdges.Collect(labels, tree.Count, hasTerrain);
-        var local = Outlines(labels, tree, edges, total: false, null);
-        return new(local, Outlines(labels, tree, edges, total: true, local));
+        var boundary = BoundaryArcs.Collect(labels, tree.Count, hasTerrain);
+        var stitching = new RingStitching(boundary, ArcShapes.AlongCells(boundary, labels.Frame));
+        var local = Outlines(labels.Frame, tree, boundary, stitching, null);
+        return new(local, Outlines(labels.Frame, tree, boundary, stitching, local));
     }
 
-    private static WatershedOutline[] Outlines(Grid<int> labels, OutletTree tree, LabelEdges edges, bool total, WatershedOutline[]? local)
+    /// <summary>Local outlines, or total ones when the local ones are given: where nothing is upstream the two are the same.</summary>
+    private static WatershedOutline[] Outlines(in GridFrame frame, OutletTree tree, BoundaryArcs boundary, RingStitching stitching, WatershedOutline[]? local)
     {
-        var frame = labels.Frame;
         var n = tree.Count;
-        var hasUpstream = new bool[n];
-        for (var k = 0; k < n; k++)
-            if (tree.Parent(k) >= 0) hasUpstream[tree.Parent(k)] = true;
-        bool Reuse(int k) => local is not null && !hasUpstream[k];
-
-        // Counted first, so that each watershed's edges lie together in one array.
-        var start = new long[n + 1];
-        for (var i = 0; i < edges.Count; i++)
-            for (var k = edges.Inside(i); Bounds(k, edges.Outside(i)); k = total ? tree.Parent(k) : -1)
-                if (!Reuse(k)) start[k + 1]++;
-        for (var k = 0; k < n; k++) start[k + 1] += start[k];
-        var codes = new long[start[n]];
-        var fill = start.AsSpan(0, n).ToArray();
-        double[] perimeter = new double[n], contact = new double[n];
-        for (var i = 0; i < edges.Count; i++)
+        var isSame = new bool[n];
+        if (local is not null)
         {
-            var code = edges.Code(i);
-            var lengthM = (code & 1) == 0 ? frame.CellWidthM : frame.CellHeightM;
-            for (var k = edges.Inside(i); Bounds(k, edges.Outside(i)); k = total ? tree.Parent(k) : -1)
-            {
-                if (Reuse(k)) continue;
-                codes[fill[k]++] = code;
-                perimeter[k] += lengthM;
-                if (edges.Contact(i)) contact[k] += lengthM;
-            }
+            Array.Fill(isSame, true);
+            for (var k = 0; k < n; k++)
+                if (tree.Parent(k) >= 0) isSame[tree.Parent(k)] = false;
+        }
+
+        // Counted first, so that each watershed's arcs lie together in one array.
+        var arcs = boundary.Arcs;
+        var start = new long[n + 1];
+        foreach (ref readonly var arc in arcs)
+        {
+            for (var k = First(arc.Left, arc.Right); k >= 0; k = Next(k, arc.Right)) start[k + 1]++;
+            for (var k = First(arc.Right, arc.Left); k >= 0; k = Next(k, arc.Left)) start[k + 1]++;
+        }
+
+        for (var k = 0; k < n; k++) start[k + 1] += start[k];
+        var ways = new int[start[n]];
+        var fill = start.AsSpan(0, n).ToArray();
+        for (var a = 0; a < arcs.Length; a++)
+        {
+            for (var k = First(arcs[a].Left, arcs[a].Right); k >= 0; k = Next(k, arcs[a].Right)) ways[fill[k]++] = a * 2;
+            for (var k = First(arcs[a].Right, arcs[a].Left); k >= 0; k = Next(k, arcs[a].Left)) ways[fill[k]++] = (a * 2) + 1;
         }
 
         var outlines = new WatershedOutline[n];
         for (var k = 0; k < n; k++)
         {
-            if (Reuse(k)) { outlines[k] = local![k]; continue; }
-            var own = codes.AsSpan((int)start[k], (int)(start[k + 1] - start[k]));
-            own.Sort();
-            outlines[k] = new(RingStitching.Polygon(own, labels), perimeter[k], contact[k]);
+            if (isSame[k])
+            {
+                outlines[k] = local![k];
+                continue;
+            }
+
+            var own = ways.AsSpan((int)start[k], (int)(start[k + 1] - start[k]));
+            long eastWest = 0, northSouth = 0, eastWestContact = 0, northSouthContact = 0;
+            foreach (var way in own)
+            {
+                ref readonly var arc = ref arcs[way >> 1];
+                (eastWest, northSouth) = (eastWest + arc.EastWest, northSouth + arc.NorthSouth);
+                (eastWestContact, northSouthContact) = (eastWestContact + arc.EastWestContact, northSouthContact + arc.NorthSouthContact);
+            }
+
+            outlines[k] = new(
+                stitching.Polygon(own),
+                (eastWest * frame.CellWidthM) + (northSouth * frame.CellHeightM),
+                (eastWestContact * frame.CellWidthM) + (northSouthContact * frame.CellHeightM));
         }
 
         return outlines;
 
-        bool Bounds(int k, int outside) => k >= 0 && (!total || outside < 0 || !tree.Drains(k, outside));
+        // The watersheds with an arc's inner side in them and its outer side not: only the label's own, or all down to where the ways join.
+        int First(int inner, int outer) => Bounds(inner, outer);
+
+        int Next(int k, int outer) => local is null ? -1 : Bounds(tree.Parent(k), outer);
+
+        int Bounds(int k, int outer)
+        {
+            if (local is not null && outer >= 0 && k >= 0 && tree.Drains(k, outer)) return -1;
+            return k >= 0 && isSame[k] ? Next(k, outer) : k;
+        }
     }
 }
