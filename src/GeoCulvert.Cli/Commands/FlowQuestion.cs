@@ -12,6 +12,8 @@ internal sealed class FlowQuestion(ParseResult parse, FlowOptions options, Comma
     // The methods take a return period even where nothing depends on it.
     private const double AnyPeriodYr = 10;
 
+    private static readonly string[] CustomaryAreas = ["ac", "acre", "acres", "mi2", "ft2"];
+
     /// <summary>Methods that take a watershed.</summary>
     public static readonly IReadOnlyList<string> Methods = ["rational", "nrcs-graphical", "nrcs-unit-hydrograph", "regression"];
 
@@ -101,7 +103,7 @@ internal sealed class FlowQuestion(ParseResult parse, FlowOptions options, Comma
             case "rational":
                 if (parse.GetValue(options.Intensity) is null && parse.GetValue(options.Table) is null) values.Wrong("--intensity", "nothing", "an intensity, or --rainfall-table with --time-of-concentration");
                 // Q = C i A with the constant 1 is how acres are multiplied by hand; 1/360 belongs to hectares.
-                return new RationalMethod { CustomaryConstant = parse.GetValue(options.Area) is { } area && new[] { "ac", "acre", "acres", "mi2", "ft2" }.Any(u => area.TrimEnd().EndsWith(u, StringComparison.OrdinalIgnoreCase)) };
+                return new RationalMethod { CustomaryConstant = parse.GetValue(options.Area) is { } area && CustomaryAreas.Any(u => area.TrimEnd().EndsWith(u, StringComparison.OrdinalIgnoreCase)) };
             case "nrcs-graphical":
                 NeedDepth();
                 return Storm() is { } type ? new NrcsGraphicalMethod(type) { PondShare = values.Number(options.PondShare, 0, 1) ?? 0, InitialAbstractionRatio = Ratio(), GivenDepthMm = DepthMm() } : null;
