@@ -82,4 +82,10 @@ public static class NrcsFindings
         "excess-duration-long", Severity.Warning,
         "The duration of excess rain is longer than a quarter of the time to peak, so the hydrograph is read too coarsely.",
         "Give a shorter duration, or leave it to the rule.");
+
+    /// <summary>The storm table is coarse for a short time of concentration.</summary>
+    public static readonly FindingCode StormCoarse = new(
+        "storm-table-coarse", Severity.Warning,
+        "The ordinates of this 24-hour storm are too far apart for so short a time of concentration; the peak may be read too low.",
+        "Use a nested storm from the rainfall table, or give the storm as a file with closer ordinates.");
 }

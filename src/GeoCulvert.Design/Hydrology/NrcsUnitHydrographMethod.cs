@@ -57,6 +57,7 @@ public sealed record NrcsUnitHydrographMethod(IDesignStorm Storm) : IPeakFlowMet
             findings.Add(NrcsFindings.PeakFactorRange.With($"{PeakFactor:0}", PeakFactor, PeakFactor < LowPeakFactor ? LowPeakFactor : HighPeakFactor));
         double tc = context.TimeOfConcentrationMin!.Value;
         if (rain.DurationMin < tc) findings.Add(NrcsFindings.StormShort.With($"{rain.DurationMin:0} min against {tc:0} min", rain.DurationMin, tc));
+        if (Storm is NrcsStorm && tc < NrcsStorm.CoarseBelowMin) findings.Add(NrcsFindings.StormCoarse.With($"{Storm.Name}: {tc:0.0} min against {NrcsStorm.CoarseBelowMin:0} min", tc, NrcsStorm.CoarseBelowMin));
         var d = Math.Max(GivenDurationMin ?? DurationOfConcentration * tc, rain.DurationMin / MostSteps);
         double lag = LagOfConcentration * tc, tp = d / 2 + lag;
         if (d > LongestOfPeakTime * tp)

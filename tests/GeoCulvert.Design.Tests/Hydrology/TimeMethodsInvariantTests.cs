@@ -122,6 +122,9 @@ public class TimeMethodsInvariantTests
         Assert.Equal(velocity.Segments.Where(s => s.Kind != "sheet"), wave.Segments.Where(s => s.Kind != "sheet"));
         Assert.Equal(wave.TimeMin!.Value, wave.Segments.Sum(s => s.TimeMin), 1e-9);
         Assert.Equal(0.15, wave.Steps.Single(s => s.Name == "sheet_roughness").Value, 1e-9);
+        // The intensity is that over the whole time, not over the sheet flow alone.
+        var i = Table.Intensity(wave.TimeMin.Value, 10).IntensityMmPerH!.Value;
+        Assert.Equal(KinematicWave.SheetTimeMin(30, 0.15, 0.02, i), wave.Segments.Single(s => s.Kind == "sheet").TimeMin, 1e-6);
     }
 
     // A rational flow goes with the intensity, so by hand: i(48 min)/i(60 min) and i(72 min)/i(60 min) of the table.

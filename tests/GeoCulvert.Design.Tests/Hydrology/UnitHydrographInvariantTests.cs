@@ -74,6 +74,15 @@ public class UnitHydrographInvariantTests
     }
 
     [Fact]
+    public void ShortTimesOnACoarseStormAreFlagged()
+    {
+        bool Flagged(IDesignStorm storm, double tc) => Run(storm, 1, 80, tc).Peak.Findings.Any(f => f.Kind == NrcsFindings.StormCoarse);
+        Assert.True(Flagged(new NrcsStorm(NrcsStormType.III), 14));
+        Assert.False(Flagged(new NrcsStorm(NrcsStormType.III), 15));
+        Assert.False(Flagged(new NestedStorm(), 14));
+    }
+
+    [Fact]
     public void MissingFiguresAreFindings()
     {
         var catchment = new Catchment("x", 1e6) { CurveNumber = 80 };
