@@ -18,6 +18,9 @@ internal static class ProjectKeys
         ("tailwater", "water level at the outlet"),
     ];
 
+    private static readonly string[] FlowMethods = ["rational", "modified-rational", "nrcs-graphical", "nrcs-unit-hydrograph", "regression", "given"];
+    private static readonly string[] TimeMethods = ["kirpich", "nrcs-velocity", "kerby", "kerby-kirpich", "faa", "nrcs-lag", "bransby-williams", "papadakis-kazan", "kinematic-wave"];
+
     /// <summary>All keys.</summary>
     public static readonly IReadOnlyList<ProjectKey> All =
     [
@@ -70,18 +73,31 @@ internal static class ProjectKeys
         new("cover", "soil_group", KeyKind.Path, null, "raster of hydrologic soil groups: 1 = A, 2 = B, 3 = C, 4 = D, 5 = A/D, 6 = B/D, 7 = C/D"),
         new("cover", "lookup", KeyKind.Path, null, "your own table of runoff coefficients by land cover and soil group; default: the table shipped"),
 
+        new("cover", "curve_numbers", KeyKind.Path, null, "your own table of curve numbers by land cover and soil group; default: the table shipped"),
+        new("cover", "dual_soil_group", KeyKind.Choice, "\"undrained\"", "which letter of a dual soil group (A/D, B/D, C/D) counts for curve numbers") { Words = ["undrained", "drained"] },
+
         new("rainfall", "table", KeyKind.Path, null, "NOAA Atlas 14 file or a plain table"),
+        new("rainfall", "equation", KeyKind.Path, null, "coefficients of i = a / (t + b)^c for each return period, instead of a table"),
+        new("rainfall", "climate_factors", KeyKind.Path, null, "table return_period_yr,factor; each factor holds from its return period up to the next; default: none"),
+        new("rainfall", "climate_on", KeyKind.Choice, "\"intensity\"", "what climate factors multiply") { Words = ["intensity", "flow"] },
         new("rainfall", "quantity", KeyKind.Choice, null, "what the table holds; needed only when it does not say") { Words = ["depth", "intensity"] },
         new("rainfall", "unit", KeyKind.Choice, null, "unit of the table; needed only when it does not say") { Words = ["mm", "in", "mm/h", "in/h"] },
 
-        new("flow", "methods", KeyKind.Choices, "[\"rational\"]", "methods to compute") { Words = ["rational", "regression", "given"] },
-        new("flow", "choose", KeyKind.Choice, null, "method that sets the design value; default: the first of methods") { Words = ["rational", "regression", "given"] },
+        new("flow", "methods", KeyKind.Choices, "[\"rational\"]", "methods to compute") { Words = FlowMethods },
+        new("flow", "choose", KeyKind.Choice, null, "method that sets the design value; default: the first of methods") { Words = FlowMethods },
         new("flow", "return_periods", KeyKind.Numbers, "[2, 10, 25, 50, 100]", "years") { Least = 1.0001, Most = 10000 },
         new("flow", "design_return_period", KeyKind.Number, null, "years; default: by road class") { Least = 1.0001, Most = 10000 },
         new("flow", "check_return_period", KeyKind.Number, null, "years; default: by road class") { Least = 1.0001, Most = 10000 },
         new("flow", "runoff_coefficient", KeyKind.Number, null, "rational C where no land cover is given") { Least = 0.01, Most = 1 },
-        new("flow", "time_of_concentration", KeyKind.Choices, "[\"kirpich\", \"nrcs-velocity\"]", "methods for the time of concentration") { Words = ["kirpich", "nrcs-velocity"] },
-        new("flow", "time_of_concentration_choose", KeyKind.Choice, null, "which time is used; default: the first method that can be computed") { Words = ["kirpich", "nrcs-velocity", "median", "smallest"] },
+        new("flow", "frequency_factors", KeyKind.Choice, "\"none\"", "Cf of the rational method: none, or 1.1 from 25, 1.2 from 50 and 1.25 from 100 years on (common practice)") { Words = ["none", "common"] },
+        new("flow", "curve_number", KeyKind.Number, null, "runoff curve number where no land cover is given") { Least = 1, Most = 100 },
+        new("flow", "abstraction_ratio", KeyKind.Number, "0.2", "initial abstraction over retention of the curve-number methods: 0.2 or 0.05") { Least = 0.05, Most = 0.2 },
+        new("flow", "storm", KeyKind.Text, null, "storm of the curve-number methods: I, IA, II or III (24 h; the graphical method needs one of these), nested (blocks from the rainfall table), or a file of a given storm; default: nested"),
+        new("flow", "peak_factor", KeyKind.Number, "484", "peak factor of the unit hydrograph (NEH-630 ch. 16)") { Least = 50, Most = 1000 },
+        new("flow", "pond_share", KeyKind.Number, "0", "share of the area in ponds and swamps away from the flow path, for nrcs-graphical") { Least = 0, Most = 1 },
+        new("flow", "time_of_concentration", KeyKind.Choices, "[\"kirpich\", \"nrcs-velocity\"]", "methods for the time of concentration") { Words = TimeMethods },
+        new("flow", "time_of_concentration_choose", KeyKind.Choice, null, "which time is used; default: the first method that can be computed") { Words = [.. TimeMethods, "median", "smallest"] },
+        new("flow", "kerby_retardance", KeyKind.Number, null, "Kerby's retardance N of the overland flow, for kerby and kerby-kirpich") { Least = 0.001, Most = 2 },
         new("flow", "smallest_time_of_concentration", KeyKind.Quantity, "\"5 min\"", "floor of the time of concentration (common practice)") { Dimension = "time", Least = 60 },
         new("flow", "regression", KeyKind.Path, null, "regression equations (TOML or CSV)"),
         new("flow", "region", KeyKind.Text, null, "region of the regression equations"),
@@ -116,8 +132,6 @@ internal static class ProjectKeys
     public static readonly IReadOnlyDictionary<string, string> NotYet = new Dictionary<string, string>(StringComparer.Ordinal)
     {
         ["[terrain] streams"] = "mapped streams are not enforced yet; streams come from stream_area",
-        ["[flow] curve_number"] = "curve-number methods are not computed yet; methods are rational, regression and given",
-        ["[rainfall] equation"] = "rainfall equations are not read yet; give a table",
         ["[rainfall] rasters"] = "rainfall rasters are not read yet; give a table",
         ["[tailwater] rating"] = "tailwater ratings are not read yet; use normal-depth or fixed",
     };

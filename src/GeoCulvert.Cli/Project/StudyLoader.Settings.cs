@@ -4,6 +4,7 @@ using GeoCulvert.Design.Hydraulics;
 using GeoCulvert.Design.Hydrology;
 using GeoCulvert.Design.Sizing;
 using GeoCulvert.Design.Study;
+using GeoCulvert.Layers;
 
 namespace GeoCulvert.Cli.Project;
 
@@ -15,19 +16,14 @@ internal sealed partial class StudyLoader
         var flow = _project["flow"];
         var names = flow.Texts("methods");
         var rainfall = Rainfall(names);
-        var methods = names.Distinct(StringComparer.Ordinal).Select(n => n switch
-        {
-            "rational" => Try<IPeakFlowMethod>(() => new RationalMethod()),
-            "regression" => Try<IPeakFlowMethod>(Regression),
-            _ => Try<IPeakFlowMethod>(Given),
-        }).OfType<IPeakFlowMethod>().ToList();
+        var climate = Climate();
+        var methods = names.Distinct(StringComparer.Ordinal).Select(n => Try(() => Method(n))).OfType<IPeakFlowMethod>().Select(m => climate?.On(m) ?? m).ToList();
         var chosen = flow.Text("choose") ?? names[0];
         if (!names.Contains(chosen)) _problems.Add(new InputProblem(_project.Place(flow, "choose"), $"\"{chosen}\"", $"one of the methods asked for: {string.Join(", ", names)}"));
-        var times = names.Contains("rational")
-            ? flow.Texts("time_of_concentration").Distinct(StringComparer.Ordinal).Select(t => t == "kirpich" ? (ITimeOfConcentration)new Kirpich() : new NrcsVelocityMethod { ChannelAreaM2 = _project["terrain"].Needed("stream_area") }).ToArray()
-            : [];
+        var needsTime = names.Any(NeedsRain);
+        var times = needsTime ? flow.Texts("time_of_concentration").Distinct(StringComparer.Ordinal).Select(t => Try(() => TimeMethod(t))).OfType<ITimeOfConcentration>().ToArray() : [];
         var rule = TimeRule(flow, times);
-        return methods.Count < names.Distinct(StringComparer.Ordinal).Count() || (rainfall is null && names.Contains("rational")) || rule is null
+        return methods.Count < names.Distinct(StringComparer.Ordinal).Count() || (rainfall is null && needsTime) || rule is null
             ? null
             : new FlowSettings(methods, chosen, flow.Numbers("return_periods"), times, rule, rainfall);
     }
@@ -43,13 +39,96 @@ internal sealed partial class StudyLoader
         return null;
     }
 
-    private RainfallTable? Rainfall(IReadOnlyList<string> methods)
+    private static bool NeedsRain(string method) => method is "rational" or "modified-rational" or "nrcs-graphical" or "nrcs-unit-hydrograph";
+
+    private IPeakFlowMethod Method(string name)
+    {
+        var flow = _project["flow"];
+        var rational = new RationalMethod
+        {
+            CustomaryConstant = _project["study"].Text("units") == "us",
+            FrequencyFactors = flow.Text("frequency_factors") == "common" ? RationalMethod.CommonFrequencyFactors : [],
+        };
+        return name switch
+        {
+            "rational" => rational,
+            "modified-rational" => new ModifiedRational { Rational = rational },
+            "nrcs-graphical" => Enum.TryParse<NrcsStormType>(flow.Text("storm") ?? "", out var type)
+                ? new NrcsGraphicalMethod(type) { PondShare = flow.Needed("pond_share"), InitialAbstractionRatio = AbstractionRatio() }
+                : throw new InputException($"{_shownName}, [flow] storm", flow.Text("storm") is { } s ? $"\"{s}\"" : "no storm", "storm = \"I\", \"IA\", \"II\" or \"III\", since methods names \"nrcs-graphical\""),
+            "nrcs-unit-hydrograph" => new NrcsUnitHydrographMethod(Storm()) { PeakFactor = flow.Needed("peak_factor"), InitialAbstractionRatio = AbstractionRatio() },
+            "regression" => Regression(),
+            _ => Given(),
+        };
+    }
+
+    private double AbstractionRatio()
+    {
+        var ratio = _project["flow"].Needed("abstraction_ratio");
+        return CurveNumberRunoff.HasRatio(ratio) ? ratio
+            : throw new InputException(_project.Place(_project["flow"], "abstraction_ratio"), FormattableString.Invariant($"{ratio}"), "0.2 or 0.05");
+    }
+
+    private IDesignStorm Storm()
+    {
+        var flow = _project["flow"];
+        var word = flow.Text("storm") ?? "nested";
+        if (word == "nested") return new NestedStorm();
+        if (Enum.TryParse<NrcsStormType>(word, out var type) && Enum.IsDefined(type)) return new NrcsStorm(type);
+        var path = Path.Combine(_project.Folder, word);
+        if (!File.Exists(path)) throw new InputException(_project.Place(flow, "storm"), $"\"{word}\"", "I, IA, II, III, nested, or a file of a given storm that is there");
+        _files.Add(InputFacts.Of(word, path, "storm", ""));
+        return GivenStorm.Read(word, File.ReadAllText(path));
+    }
+
+    private ITimeOfConcentration TimeMethod(string name)
+    {
+        var retardance = _project["flow"].Number("kerby_retardance");
+        if (retardance is null && (name is "kerby" or "kerby-kirpich"))
+            throw new InputException($"{_shownName}, [flow] kerby_retardance", "no retardance", $"kerby_retardance = 0.4 or the like, since time_of_concentration names \"{name}\"");
+        return name switch
+        {
+            "kirpich" => new Kirpich(),
+            "kerby" => new Kerby(retardance),
+            "kerby-kirpich" => new KerbyKirpich(retardance),
+            "faa" => new FaaTime(),
+            "nrcs-lag" => new NrcsLag(),
+            "bransby-williams" => new BransbyWilliams(),
+            "papadakis-kazan" => new PapadakisKazan(),
+            "kinematic-wave" => new KinematicWave { Path = Velocity() },
+            _ => Velocity(),
+        };
+    }
+
+    private NrcsVelocityMethod Velocity() => new() { ChannelAreaM2 = _project["terrain"].Needed("stream_area") };
+
+    private ClimateFactors? Climate() => !_project["rainfall"].Has("climate_factors") ? null : Try(() =>
+    {
+        var t = TextFile("rainfall", "climate_factors", "climate factors")!.Value;
+        var table = PublishedTable.Parse(t.Name, t.Text, "return_period_yr", "factor");
+        var factors = table.Rows.Select(r =>
+        {
+            var (period, factor) = (r.Number("return_period_yr"), r.Number("factor"));
+            return period >= 1 && factor is > 0 and < 10 ? new ClimateFactor(period, factor)
+                : throw new InputException($"{t.Name} line {r.Line}", FormattableString.Invariant($"return period {period}, factor {factor}"), "a return period of at least 1 year and a factor above 0");
+        }).ToList();
+        return new ClimateFactors(_project["rainfall"].Text("climate_on") == "flow" ? ClimateTarget.Flow : ClimateTarget.Intensity, factors);
+    });
+
+    private IRainfall? Rainfall(IReadOnlyList<string> methods)
     {
         var table = _project["rainfall"];
+        if (table.Has("equation") && table.Has("table"))
+            _problems.Add(new InputProblem(_project.Place(table, "equation"), "an equation beside a table", "one of the two"));
+        if (table.Has("equation")) return Try(() =>
+        {
+            var e = TextFile("rainfall", "equation", "rainfall equation")!.Value;
+            return RainfallEquation.Read(e.Name, e.Text);
+        });
         if (!table.Has("table"))
         {
-            if (methods.Contains("rational"))
-                _problems.Add(new InputProblem($"{_shownName}, [rainfall] table", "no rainfall", "a NOAA Atlas 14 file or a plain table, for example table = \"rain.csv\"; or methods that need none"));
+            if (methods.FirstOrDefault(NeedsRain) is { } needing)
+                _problems.Add(new InputProblem($"{_shownName}, [rainfall] table", "no rainfall", $"a NOAA Atlas 14 file or a plain table, for example table = \"rain.csv\"; or an equation; methods names \"{needing}\""));
             return null;
         }
 
@@ -105,8 +184,10 @@ internal sealed partial class StudyLoader
 
     private void NeedCoefficient(bool hasCover)
     {
+        if (!hasCover && !_project["flow"].Has("curve_number") && _project["flow"].Texts("methods").FirstOrDefault(m => m.StartsWith("nrcs-", StringComparison.Ordinal)) is { } nrcs)
+            _problems.Add(new InputProblem($"{_shownName}, [flow] curve_number", "no curve number", $"curve_number = 75 or the like, or [cover] land_cover, since methods names \"{nrcs}\""));
         var flow = _project["flow"];
-        if (hasCover || flow.Has("runoff_coefficient") || !flow.Texts("methods").Contains("rational")) return;
+        if (hasCover || flow.Has("runoff_coefficient") || !flow.Texts("methods").Any(m => m is "rational" or "modified-rational")) return;
         _problems.Add(new InputProblem($"{_shownName}, [flow] runoff_coefficient", "no runoff coefficient", "runoff_coefficient = 0.35 or the like, or [cover] land_cover, since methods names \"rational\""));
     }
 
@@ -131,6 +212,7 @@ internal sealed partial class StudyLoader
             AcceptedEdgeContactShare = _project["crossings"].Needed("accept_edge_contact"),
             Flow = flow,
             RunoffCoefficient = _project["flow"].Number("runoff_coefficient"),
+            CurveNumber = _project["flow"].Number("curve_number"),
             DesignReturnPeriodYr = _project["flow"].Number("design_return_period"),
             CheckReturnPeriodYr = _project["flow"].Number("check_return_period"),
             Catalogue = catalogue,

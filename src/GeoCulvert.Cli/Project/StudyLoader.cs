@@ -62,6 +62,10 @@ internal sealed partial class StudyLoader
         var catalogue = Catalogue();
         var overrides = Try(() => TextFile("crossings", "overrides", "overrides") is { } t ? Overrides.Read(t.Name, t.Text) : Overrides.None) ?? Overrides.None;
         var coefficients = Try(() => TextFile("cover", "lookup", "cover lookup") is { } t ? RunoffCoefficientTable.From(PublishedTable.Parse(t.Name, t.Text, "cover_id", "name", "C_A", "C_B", "C_C", "C_D"), null) : RunoffCoefficientTable.Published);
+        var dual = _project["cover"].Text("dual_soil_group") == "drained" ? DualSoilGroup.Drained : DualSoilGroup.Undrained;
+        var curveNumbers = Try(() => TextFile("cover", "curve_numbers", "curve numbers") is { } t
+            ? CurveNumberTable.From(PublishedTable.Parse(t.Name, t.Text, "cover_id", "name", "CN_A", "CN_B", "CN_C", "CN_D"), dual)
+            : CurveNumberTable.PublishedWith(dual));
         var landCover = Classes("land_cover", elevation?.Elevation.Frame, plane, checkOnly);
         var soilGroup = Classes("soil_group", elevation?.Elevation.Frame, plane, checkOnly);
         if (_project.Roads.Count == 0 && points is null && !_project["crossings"].Has("points"))
@@ -79,6 +83,7 @@ internal sealed partial class StudyLoader
             LandCover = landCover,
             SoilGroup = soilGroup,
             Coefficients = coefficients!,
+            CurveNumbers = curveNumbers!,
             Overrides = overrides,
         };
         var study = _project["study"];

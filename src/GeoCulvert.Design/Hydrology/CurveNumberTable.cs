@@ -52,8 +52,12 @@ public sealed class CurveNumberTable
     }
 
     /// <summary>The program's own: land-cover classes and the covers of TR-55.</summary>
-    public static CurveNumberTable Published { get; } = new(
-        [PublishedTable.Embedded("Hydrology/Tables/land_cover.csv"), PublishedTable.Embedded("Hydrology/Tables/curve_numbers.csv")]);
+    public static CurveNumberTable Published { get; } = PublishedWith(DualSoilGroup.Undrained);
+
+    /// <summary>The program's own with a rule for dual soil groups.</summary>
+    /// <param name="dual">Which letter of a dual soil group counts.</param>
+    public static CurveNumberTable PublishedWith(DualSoilGroup dual) =>
+        new([PublishedTable.Embedded("Hydrology/Tables/land_cover.csv"), PublishedTable.Embedded("Hydrology/Tables/curve_numbers.csv")]) { Dual = dual };
 
     /// <summary>Which letter of a dual soil group counts; the second, undrained, by default.</summary>
     public DualSoilGroup Dual { get; init; } = DualSoilGroup.Undrained;

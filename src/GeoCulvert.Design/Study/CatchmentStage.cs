@@ -44,6 +44,7 @@ public sealed class CatchmentStage
             MeanBasinSlopeMPerM = total.MeanBasinSlopeMPerM,
             MeanElevationM = total.MeanElevationM,
             RunoffCoefficient = Coefficient(crossingId, watershed.Outlet, findings),
+            CurveNumber = CurveNumber(crossingId, watershed.Outlet, findings),
             FlowPath = path is null ? [] : [.. path.Profile.Where(p => !double.IsNaN(p.ElevationM)).Select(Point)],
         };
     }
@@ -86,6 +87,26 @@ public sealed class CatchmentStage
         }
 
         return _settings.RunoffCoefficient is { } c ? new RunoffCoefficient(c, "[flow] runoff_coefficient") : null;
+    }
+
+    private double? CurveNumber(string crossingId, int outlet, List<Finding> findings)
+    {
+        if (_inputs.Overrides.Of(crossingId, "curve_number") is { } given) return given;
+        if (!_settings.NeedsCurveNumber) return null;
+        if (_classes is not null)
+        {
+            var classes = _classes.Total[outlet];
+            var cellM2 = _terrain.Elevation.Frame.CellAreaM2;
+            var parts = classes.CellsByClass.GroupBy(c => c.Key / 10).OrderBy(g => g.Key)
+                .Select(g => new CurveNumberArea((g.Key / 10).ToString(), SoilGroups[g.Key % 10], g.Sum(c => c.Value) * cellM2))
+                .Append(new CurveNumberArea(null, null, classes.MissingCells * cellM2))
+                .ToArray();
+            var composite = _inputs.CurveNumbers.Composite(parts);
+            findings.AddRange(composite.Findings);
+            if (composite.CurveNumber is not null) return composite.CurveNumber;
+        }
+
+        return _settings.CurveNumber;
     }
 
     private FlowPathPoint Point(FlowPathStation p) => new(

@@ -62,7 +62,7 @@ public static class FlowStage
         Catchment catchment, FlowSettings settings, double designReturnPeriodYr, double checkReturnPeriodYr, double? givenTimeOfConcentrationMin)
     {
         ArgumentNullException.ThrowIfNull(settings);
-        var time = Time(catchment, settings, givenTimeOfConcentrationMin);
+        var time = Time(catchment, settings, givenTimeOfConcentrationMin, designReturnPeriodYr);
         var periods = settings.ReturnPeriodsYr.Append(designReturnPeriodYr).Append(checkReturnPeriodYr).Distinct().Order().ToArray();
         var flows = new DesignFlowRule(settings.ChosenMethod)
             .Compute(catchment, settings.Methods, periods, new PeakFlowContext(settings.Rainfall, time?.TimeMin));
@@ -72,7 +72,7 @@ public static class FlowStage
         return new FlowResult(catchment, time, flows, design, check, Merge(findings));
     }
 
-    private static ChosenTimeOfConcentration? Time(Catchment catchment, FlowSettings settings, double? givenMin)
+    private static ChosenTimeOfConcentration? Time(Catchment catchment, FlowSettings settings, double? givenMin, double designReturnPeriodYr)
     {
         if (givenMin is { } t)
         {
@@ -82,7 +82,7 @@ public static class FlowStage
 
         return settings.Times.Count == 0
             ? null
-            : settings.TimeRule.Compute(catchment, settings.Times, new TimeOfConcentrationContext(settings.Rainfall));
+            : settings.TimeRule.Compute(catchment, settings.Times, new TimeOfConcentrationContext(settings.Rainfall, null, designReturnPeriodYr));
     }
 
     /// <summary>One finding for each code: the same doubt at five return periods is one doubt; the worst value stands.</summary>

@@ -9,6 +9,7 @@ public sealed class Overrides
     public static readonly IReadOnlyList<(string Name, string Dimension, string Sets)> Columns =
     [
         ("runoff_coefficient", "", "rational C"),
+        ("curve_number", "", "runoff curve number"),
         ("time_of_concentration", "time", "time of concentration"),
         ("design_flow", "flow", "flow of the design flood"),
         ("check_flow", "flow", "flow of the check flood"),

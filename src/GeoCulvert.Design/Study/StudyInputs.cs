@@ -40,6 +40,9 @@ public sealed record StudyInputs
     /// <summary>Runoff coefficients by cover and soil group.</summary>
     public RunoffCoefficientTable Coefficients { get; init; } = RunoffCoefficientTable.Published;
 
+    /// <summary>Curve numbers by cover and soil group.</summary>
+    public CurveNumberTable CurveNumbers { get; init; } = CurveNumberTable.Published;
+
     /// <summary>Values set for single crossings.</summary>
     public Overrides Overrides { get; init; } = Overrides.None;
 }
@@ -92,6 +95,12 @@ public sealed record StudySettings
 
     /// <summary>Rational C where no land cover is given.</summary>
     public double? RunoffCoefficient { get; init; }
+
+    /// <summary>Curve number where no land cover is given.</summary>
+    public double? CurveNumber { get; init; }
+
+    /// <summary>Whether a method works with curve numbers.</summary>
+    public bool NeedsCurveNumber => Flow.Methods.Any(m => m.Name.StartsWith("nrcs-", StringComparison.Ordinal)) || Flow.Times.Any(t => t.Name == "nrcs-lag");
 
     /// <summary>Design flood of every road, years; null to take each class's.</summary>
     public double? DesignReturnPeriodYr { get; init; }
