@@ -2,6 +2,13 @@ using System.Diagnostics;
 using GeoCulvert.Benchmarks;
 using GeoCulvert.Design.Terrain;
 
+if (args is ["sizing", ..])
+{
+    // Usage: GeoCulvert.Benchmarks sizing [CROSSINGS]
+    SizingBenchmark.Run(args.Length > 1 ? int.Parse(args[1]) : 10000);
+    return;
+}
+
 // Usage: GeoCulvert.Benchmarks [SIDE [TURNS]]   prints nanoseconds a cell (best of the turns) for terrain of SIDE x SIDE cells.
 var side = args.Length > 0 ? int.Parse(args[0]) : 2000;
 var turns = args.Length > 1 ? int.Parse(args[1]) : 3;

@@ -111,6 +111,9 @@ internal static class ProjectKeys
         new("culvert", "sizes_circle", KeyKind.Path, null, "your own table of pipe sizes; default: the table shipped"),
         new("culvert", "sizes_box", KeyKind.Path, null, "your own table of box sizes; default: the table shipped"),
 
+        new("culvert", "unit_prices", KeyKind.Path, null, "table shape,size,price_per_m (or price_per_ft),price_per_end: the least cost is sought; default: the least barrel area"),
+        new("culvert", "example_prices", KeyKind.Choice, "\"no\"", "use the shipped prices, which are invented and only show how a table looks") { Words = ["no", "yes"] },
+
         new("criteria", "hw_over_d", KeyKind.Number, "1.5", "largest headwater depth over rise at the design flood (common practice)") { Least = 0.3, Most = 10 },
         Length("criteria", "freeboard", "\"0.3 m\"", "from the design headwater to the lowest road level (common practice)", 0),
         Length("criteria", "largest_headwater_depth", null, "above the inlet invert, at the design flood", 0.01),

@@ -180,6 +180,19 @@ internal sealed partial class StudyLoader
             inlets, shapes, culvert.Needed("roughness"), culvert.Number("entrance_loss"), (int)culvert.Needed("largest_number_of_barrels"), Sizes("sizes_circle"), Sizes("sizes_box")));
     }
 
+    private UnitPrices? Prices()
+    {
+        if (_project["culvert"].Has("unit_prices"))
+            return Try(() =>
+            {
+                var t = TextFile("culvert", "unit_prices", "unit prices")!.Value;
+                return UnitPrices.Read(PublishedTable.Parse(t.Name, t.Text));
+            });
+        if (_project["culvert"].Text("example_prices") != "yes") return null;
+        _findings.Add(StudyFindings.PricesInvented.With(UnitPrices.Example.Name));
+        return UnitPrices.Example;
+    }
+
     private PublishedTable? Sizes(string key) => TextFile("culvert", key, "sizes") is { } t ? PublishedTable.Parse(t.Name, t.Text) : null;
 
     private void NeedCoefficient(bool hasCover)
@@ -216,6 +229,7 @@ internal sealed partial class StudyLoader
             DesignReturnPeriodYr = _project["flow"].Number("design_return_period"),
             CheckReturnPeriodYr = _project["flow"].Number("check_return_period"),
             Catalogue = catalogue,
+            Prices = _prices,
             SmallestRiseM = criteria.Number("smallest_rise"),
             Criteria = new SizingCriteria
             {

@@ -1,6 +1,7 @@
 using GeoCulvert.Design.Basis;
 using GeoCulvert.Design.Crossings;
 using GeoCulvert.Design.Hydrology;
+using GeoCulvert.Design.Sizing;
 using GeoCulvert.Design.Study;
 using GeoCulvert.Layers;
 using NetTopologySuite.Geometries;
@@ -28,6 +29,7 @@ internal sealed partial class StudyLoader
     private readonly List<Finding> _findings = [];
     private readonly List<InputFact> _files = [];
     private readonly string _shownName;
+    private UnitPrices? _prices;
 
     private StudyLoader(ProjectFile project, string shownName) => (_project, _shownName, _problems) = (project, shownName, [.. project.Problems]);
 
@@ -60,6 +62,7 @@ internal sealed partial class StudyLoader
         var culverts = plane is null ? null : KnownCulverts(plane);
         var flow = Flow();
         var catalogue = Catalogue();
+        _prices = Prices();
         var overrides = Try(() => TextFile("crossings", "overrides", "overrides") is { } t ? Overrides.Read(t.Name, t.Text) : Overrides.None) ?? Overrides.None;
         var coefficients = Try(() => TextFile("cover", "lookup", "cover lookup") is { } t ? RunoffCoefficientTable.From(PublishedTable.Parse(t.Name, t.Text, "cover_id", "name", "C_A", "C_B", "C_C", "C_D"), null) : RunoffCoefficientTable.Published);
         var dual = _project["cover"].Text("dual_soil_group") == "drained" ? DualSoilGroup.Drained : DualSoilGroup.Undrained;

@@ -20,6 +20,16 @@ public sealed record BarrelChoice(ISection Section, InletType Inlet, double Roug
 /// <param name="LargestNumberOfBarrels">Barrels side by side.</param>
 public sealed record CulvertCatalogue(IReadOnlyList<BarrelChoice> Barrels, int LargestNumberOfBarrels)
 {
+    private (BarrelChoice Choice, int Count)[]? _byArea;
+
+    /// <summary>Every barrel in every number, by total area, then number, then order of the catalogue.</summary>
+    public IReadOnlyList<(BarrelChoice Choice, int Count)> ByArea => _byArea ??=
+    [
+        .. Barrels.SelectMany((b, i) => Enumerable.Range(1, LargestNumberOfBarrels).Select(n => (Choice: b, Count: n, Index: i)))
+            .OrderBy(o => Math.Round(o.Count * o.Choice.Section.FullAreaM2, 9)).ThenBy(o => o.Count).ThenBy(o => o.Index)
+            .Select(o => (o.Choice, o.Count)),
+    ];
+
     /// <summary>Builds a catalogue from tables of sizes.</summary>
     /// <param name="inlets">Inlets allowed; each gives the barrels of its own shape.</param>
     /// <param name="shapes">circle, box.</param>

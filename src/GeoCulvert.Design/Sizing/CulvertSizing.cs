@@ -29,17 +29,26 @@ public sealed record CriterionResult(string Name, string Flood, double Value, do
 /// <param name="Road">Road as a weir; null when there is none.</param>
 public sealed record SizingRequest(
     CulvertCatalogue Catalogue, SizingCriteria Criteria, double DesignFlowM3PerS, double CheckFlowM3PerS, double LengthM, double InletElevationM,
-    double OutletElevationM, ITailwater Tailwater, RoadCrest? Road);
+    double OutletElevationM, ITailwater Tailwater, RoadCrest? Road)
+{
+    /// <summary>Unit prices; with them the least cost is sought, without them the least barrel area.</summary>
+    public UnitPrices? Prices { get; init; }
+}
 
-/// <summary>An option that was rated.</summary>
+/// <summary>An option that was looked at.</summary>
 /// <param name="Barrels">The barrels.</param>
 /// <param name="Choice">Row of the catalogue.</param>
-/// <param name="Design">Rating at the design flood.</param>
+/// <param name="DesignFlood">Rating at the design flood, computed when it is first asked for: many options lose by their size or under inlet control alone.</param>
 /// <param name="CheckFlood">Rating at the check flood, computed when it is first asked for: most options lose before it matters.</param>
-/// <param name="Criteria">Criteria one by one.</param>
+/// <param name="Criteria">Criteria one by one; of an option that was not rated only those broken already.</param>
+/// <param name="IsRated">Whether it was rated at the design flood; not so where it fails by its size or under inlet control alone, which headwater never falls below.</param>
+/// <param name="Cost">Installed cost in the currency of the prices; null without prices or without one for this size.</param>
 public sealed record SizingOption(
-    CulvertBarrels Barrels, BarrelChoice Choice, CulvertRating Design, Lazy<CulvertRating> CheckFlood, IReadOnlyList<CriterionResult> Criteria)
+    CulvertBarrels Barrels, BarrelChoice Choice, Lazy<CulvertRating> DesignFlood, Lazy<CulvertRating> CheckFlood, IReadOnlyList<CriterionResult> Criteria, bool IsRated, double? Cost)
 {
+    /// <summary>Rating at the design flood.</summary>
+    public CulvertRating Design => DesignFlood.Value;
+
     /// <summary>Rating at the check flood.</summary>
     public CulvertRating Check => CheckFlood.Value;
 
@@ -51,8 +60,8 @@ public sealed record SizingOption(
 }
 
 /// <summary>The outcome of a search.</summary>
-/// <param name="Chosen">The option with the least barrel area, then the fewest barrels, that meets every criterion; null when none does.</param>
-/// <param name="Options">Every option in the order of the search.</param>
+/// <param name="Chosen">The option with the least cost (with prices), else the least barrel area, then the fewest barrels, that meets every criterion; null when none does.</param>
+/// <param name="Options">Options in the order of the search: all that come before the chosen one, and some after it; all when none fits.</param>
 /// <param name="Closest">When nothing fits: the option that fails by least.</param>
 public sealed record SizingOutcome(SizingOption? Chosen, IReadOnlyList<SizingOption> Options, SizingOption? Closest)
 {
@@ -61,33 +70,51 @@ public sealed record SizingOutcome(SizingOption? Chosen, IReadOnlyList<SizingOpt
     {
         ArgumentNullException.ThrowIfNull(option);
         if (ReferenceEquals(option, Chosen)) return "chosen";
-        var broken = option.Criteria.Where(c => !c.IsMet).Select(c => $"{c.Name} {c.Value:0.00} beyond {c.Limit:0.00}").ToArray();
+        var broken = option.Criteria.Where(c => !c.IsMet).Select(c => $"{c.Name} {c.Value:0.00} beyond {c.Limit:0.00}{(option.IsRated ? "" : c.Origin)}").ToArray();
         if (broken.Length > 0) return string.Join("; ", broken);
-        return option.Barrels.AreaM2 > Chosen!.Barrels.AreaM2 * (1 + 1e-9) ? $"larger: {option.Barrels.AreaM2:0.00} m2 of barrel against {Chosen.Barrels.AreaM2:0.00} m2"
+        if (Chosen is null) return "";
+        if (Chosen.Cost is { } least && option.Cost > least) return FormattableString.Invariant($"dearer: {option.Cost:0} against {least:0}");
+        if (Chosen.Cost is not null && option.Cost is null) return "no price for this size";
+        return option.Barrels.AreaM2 > Chosen.Barrels.AreaM2 * (1 + 1e-9) ? $"larger: {option.Barrels.AreaM2:0.00} m2 of barrel against {Chosen.Barrels.AreaM2:0.00} m2"
             : option.Barrels.Count > Chosen.Barrels.Count ? "as large, with more barrels" : "as good; later in the catalogue";
     }
 }
 
-/// <summary>Chooses a culvert: every option of the catalogue is rated at both floods and held against every criterion.</summary>
+/// <summary>
+/// Chooses a culvert from the whole catalogue: options are taken in the order of cost (or barrel area), the first that meets every criterion wins. An option whose size, or whose
+/// headwater under inlet control alone, breaks a criterion is not rated further: headwater is never below that of inlet control while no water goes over the road, and an option that
+/// sends water over the road at the design flood fails anyway.
+/// </summary>
 public static class CulvertSizing
 {
+    /// <summary>Options after the chosen one that are looked at too.</summary>
+    public const int RunnersUp = 12;
+
+    private const double Tolerance = 1e-9;
+
+    // Rounding of the full rating may not turn an option that passes into one that was screened out.
+    private const double Margin = 1e-6;
+    private const string NotRated = " under inlet control alone";
+
     /// <summary>Searches the whole catalogue.</summary>
     public static SizingOutcome Choose(SizingRequest request)
     {
         ArgumentNullException.ThrowIfNull(request);
-        var options = new List<SizingOption>();
-        foreach (var choice in request.Catalogue.Barrels)
+        var seen = new List<SizingOption>();
+        SizingOption? chosen = null;
+        var after = 0;
+        foreach (var (choice, count) in Ordered(request))
         {
-            for (var count = 1; count <= request.Catalogue.LargestNumberOfBarrels; count++) options.Add(Rate(request, choice, count));
+            if (chosen is not null && after++ == RunnersUp) break;
+            var option = Screen(request, choice, count) ?? Rate(request, choice, count);
+            seen.Add(option);
+            if (chosen is null && option.MeetsAll && (request.Prices is null || option.Cost is not null)) chosen = option;
         }
 
-        var ordered = options
-            .Select((o, i) => (Option: o, Index: i))
-            .OrderBy(o => Math.Round(o.Option.Barrels.AreaM2, 9)).ThenBy(o => o.Option.Barrels.Count).ThenBy(o => o.Index)
-            .Select(o => o.Option).ToArray();
-        var chosen = ordered.FirstOrDefault(o => o.MeetsAll);
-        var closest = chosen is null ? ordered.MinBy(o => o.Criteria.Sum(c => c.MissShare)) : null;
-        return new SizingOutcome(chosen, ordered, closest);
+        if (chosen is not null) return new SizingOutcome(chosen, seen, null);
+        // Nothing fits: now every option has to be rated to know which fails by least.
+        var all = seen.Select(o => o.IsRated ? o : Rate(request, o.Choice, o.Barrels.Count)).ToArray();
+        return new SizingOutcome(null, all, all.MinBy(o => o.Criteria.Sum(c => c.MissShare)));
     }
 
     /// <summary>Rates one option at both floods against every criterion.</summary>
@@ -95,12 +122,57 @@ public static class CulvertSizing
     {
         ArgumentNullException.ThrowIfNull(request);
         ArgumentNullException.ThrowIfNull(choice);
-        var barrels = new CulvertBarrels(
-            choice.Section, count, choice.Inlet, choice.RoughnessN, choice.EntranceLossCoefficient, request.LengthM, request.InletElevationM, request.OutletElevationM);
+        var barrels = Barrels(request, choice, count);
         var site = new CulvertSite(barrels, request.Tailwater, request.Road);
         var design = CulvertHydraulics.Rate(site, request.DesignFlowM3PerS);
         var check = new Lazy<CulvertRating>(() => CulvertHydraulics.Rate(site, request.CheckFlowM3PerS));
-        return new SizingOption(barrels, choice, design, check, Judge(request, design, check));
+        return new SizingOption(barrels, choice, new Lazy<CulvertRating>(design), check, Judge(request, design, check), true, Cost(request, choice, count));
+    }
+
+    /// <summary>Options by cost, those without a price last; without prices by barrel area; then by number of barrels, then as the catalogue has them.</summary>
+    private static IEnumerable<(BarrelChoice Choice, int Count)> Ordered(SizingRequest request)
+    {
+        var ordered = request.Catalogue.ByArea;
+        return request.Prices is null ? ordered : ordered
+            .Select((o, i) => (o.Choice, o.Count, Cost: Cost(request, o.Choice, o.Count) ?? double.PositiveInfinity, Index: i))
+            .OrderBy(o => o.Cost).ThenBy(o => o.Index).Select(o => (o.Choice, o.Count));
+    }
+
+    private static double? Cost(SizingRequest request, BarrelChoice choice, int count) => request.Prices?.Of(choice, count, request.LengthM);
+
+    private static CulvertBarrels Barrels(SizingRequest request, BarrelChoice choice, int count) => new(
+        choice.Section, count, choice.Inlet, choice.RoughnessN, choice.EntranceLossCoefficient, request.LengthM, request.InletElevationM, request.OutletElevationM);
+
+    /// <summary>An option that fails by its size or under inlet control alone, not rated; null when it has to be rated.</summary>
+    private static SizingOption? Screen(SizingRequest request, BarrelChoice choice, int count)
+    {
+        var c = request.Criteria;
+        var barrels = Barrels(request, choice, count);
+        double inlet = InletControl.Headwater(choice.Section, choice.Inlet, request.DesignFlowM3PerS / count, barrels.SlopeMPerM).HeadwaterM, level = request.InletElevationM + inlet;
+        var rise = choice.Section.RiseM;
+        var broken = new List<CriterionResult>();
+        Above("HW/D", inlet / rise, c.LargestHeadwaterRatio, QuantityKind.None);
+        if (rise < c.SmallestRiseM - Tolerance) broken.Add(new("rise", "", rise, c.SmallestRiseM, QuantityKind.Length, false, ""));
+        if (c.LargestHeadwaterDepthM is { } depth) Above("headwater depth", inlet, depth, QuantityKind.Length);
+        if (c.HighestHeadwaterElevationM is { } highest) Above("headwater elevation", level, highest, QuantityKind.Length);
+        if (request.Road is { } road)
+        {
+            if (road.LowestM - level < c.FreeboardM - Margin) broken.Add(new("freeboard", "design", road.LowestM - level, c.FreeboardM, QuantityKind.Length, false, NotRated));
+            else if (level > road.LowestM + Margin) Above("headwater above the road", level, road.LowestM, QuantityKind.Length);
+            var cover = road.LowestM - (request.InletElevationM + rise);
+            if (cover < c.SmallestCoverM - Tolerance) broken.Add(new("cover", "", cover, c.SmallestCoverM, QuantityKind.Length, false, ""));
+        }
+
+        if (broken.Count == 0) return null;
+        var site = new CulvertSite(barrels, request.Tailwater, request.Road);
+        return new SizingOption(
+            barrels, choice, new Lazy<CulvertRating>(() => CulvertHydraulics.Rate(site, request.DesignFlowM3PerS)), new Lazy<CulvertRating>(() => CulvertHydraulics.Rate(site, request.CheckFlowM3PerS)),
+            broken, false, Cost(request, choice, count));
+
+        void Above(string name, double value, double limit, QuantityKind kind)
+        {
+            if (value > limit + Margin) broken.Add(new(name, "design", value, limit, kind, false, NotRated));
+        }
     }
 
     private static List<CriterionResult> Judge(SizingRequest request, CulvertRating design, Lazy<CulvertRating> check)
@@ -129,8 +201,8 @@ public static class CulvertSizing
     }
 
     private static CriterionResult AtMost(string name, string flood, double value, double limit, QuantityKind kind, string origin) =>
-        new(name, flood, value, limit, kind, value <= limit + 1e-9, origin);
+        new(name, flood, value, limit, kind, value <= limit + Tolerance, origin);
 
     private static CriterionResult AtLeast(string name, string flood, double value, double limit, QuantityKind kind, string origin) =>
-        new(name, flood, value, limit, kind, value >= limit - 1e-9, origin);
+        new(name, flood, value, limit, kind, value >= limit - Tolerance, origin);
 }

@@ -111,6 +111,7 @@ public static class CrossingAssembly
             CheckHeadwaterElevationM = chosen.Check.HeadwaterElevationM,
             CheckRoadFlowM3PerS = chosen.Check.RoadFlowM3PerS,
             OvertoppingReturnPeriodYr = overtopped,
+            Cost = chosen.Cost,
         };
     }
 
@@ -137,6 +138,11 @@ public static class CrossingAssembly
     {
         var ordered = outcome.Options.OrderBy(o => !ReferenceEquals(o, outcome.Chosen)); // a stable sort: the rest keep their order
         return [.. ordered.Select(o => new SheetOption(
-            o.Description, o.Barrels.AreaM2, o.Design.HeadwaterElevationM, o.Design.HeadwaterOverRise, o.Design.OutletVelocityMPerS, outcome.Reason(o)))];
+            o.Description,
+            o.Barrels.AreaM2,
+            o.IsRated ? o.Design.HeadwaterElevationM : double.NaN,
+            o.IsRated ? o.Design.HeadwaterOverRise : double.NaN,
+            o.IsRated ? o.Design.OutletVelocityMPerS : double.NaN,
+            outcome.Reason(o)) { Cost = o.Cost })];
     }
 }

@@ -115,6 +115,9 @@ public sealed record CulvertResult
 
     /// <summary>Return period at which the road is first overtopped, years; null when not within those asked for.</summary>
     public double? OvertoppingReturnPeriodYr { get; init; }
+
+    /// <summary>Installed cost in the currency of the prices; null without prices.</summary>
+    public double? Cost { get; init; }
 }
 
 /// <summary>Where the barrel lies, as results carry it; SI.</summary>

@@ -68,7 +68,7 @@ public static class CulvertStage
         };
         SizingRequest Ask(CulvertLine at, RoadCrest? road, List<Finding> doubts) => new(
             settings.Catalogue, criteria, flow.Design.FlowM3PerS!.Value, flow.Check.FlowM3PerS!.Value, at.Length!.Value, at.InletElevation!.Value, at.OutletElevation!.Value,
-            TailwaterStage.For(crossing, terrain, watershed.Total.AreaM2, at.OutletElevation.Value, settings.Tailwater, Given("tailwater_elevation"), doubts), road);
+            TailwaterStage.For(crossing, terrain, watershed.Total.AreaM2, at.OutletElevation.Value, settings.Tailwater, Given("tailwater_elevation"), doubts), road) { Prices = settings.Prices };
 
         var assumed = false;
         if (ShowsNoEmbankment(crossing, line, terrain, criteria) && CulvertSizing.Choose(Ask(line, null, [])).Chosen is { } first)

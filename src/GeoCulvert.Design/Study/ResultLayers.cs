@@ -56,6 +56,7 @@ public static class ResultLayers
             Real<CrossingResult>("hw_over_d", QuantityKind.None, "HW/D", "Headwater depth over rise at the design flood.", c => c.Culvert?.HeadwaterOverRise),
             Real<CrossingResult>("outlet_velocity", QuantityKind.Velocity, "Outlet velocity", "Velocity at the outlet at the design flood.", c => c.Culvert?.OutletVelocityMPerS),
             Real<CrossingResult>("overtopping_return_period", QuantityKind.Years, "Overtopped at", "Shortest return period asked for at which the road is overtopped; empty when none.", c => c.Culvert?.OvertoppingReturnPeriodYr),
+            Real<CrossingResult>("cost", QuantityKind.None, "Cost", "Installed cost by the table of unit prices, in its currency; empty without one.", c => c.Culvert?.Cost),
             Whole<CrossingResult>("findings", "Findings", "Number of findings on the crossing.", c => c.Findings.Count),
             Text<CrossingResult>("first_finding", "First finding", "Code of the gravest finding.", c => c.Findings.Count > 0 ? c.Findings[0].Code : null),
         ]);
@@ -151,9 +152,10 @@ public static class ResultLayers
             Whole<(string CrossingId, int Rank, SheetOption Option)>("rank", "Rank", "Order of the search, 1 first.", r => r.Rank),
             Text<(string CrossingId, int Rank, SheetOption Option)>("culvert", "Culvert", "In one line, as on a drawing.", r => r.Option.Culvert),
             Real<(string CrossingId, int Rank, SheetOption Option)>("barrel_area", QuantityKind.SmallArea, "Barrel area", "Total area of the barrels.", r => r.Option.BarrelAreaM2),
-            Real<(string CrossingId, int Rank, SheetOption Option)>("headwater_elevation", QuantityKind.Length, "Headwater", "At the design flood.", r => r.Option.HeadwaterElevationM),
+            Real<(string CrossingId, int Rank, SheetOption Option)>("headwater_elevation", QuantityKind.Length, "Headwater", "At the design flood; empty where the option failed before it had to be rated.", r => r.Option.HeadwaterElevationM),
             Real<(string CrossingId, int Rank, SheetOption Option)>("hw_over_d", QuantityKind.None, "HW/D", "At the design flood.", r => r.Option.HeadwaterOverRise),
             Real<(string CrossingId, int Rank, SheetOption Option)>("outlet_velocity", QuantityKind.Velocity, "Outlet velocity", "At the design flood.", r => r.Option.OutletVelocityMPerS),
+            Real<(string CrossingId, int Rank, SheetOption Option)>("cost", QuantityKind.None, "Cost", "Installed cost by the table of unit prices; empty without one.", r => r.Option.Cost),
             Text<(string CrossingId, int Rank, SheetOption Option)>("reason", "Reason", "chosen, or why it lost.", r => r.Option.Status),
         ]);
 

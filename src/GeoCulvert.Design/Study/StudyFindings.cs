@@ -5,6 +5,12 @@ namespace GeoCulvert.Design.Study;
 /// <summary>Codes raised where the legs of the pipeline meet.</summary>
 public static class StudyFindings
 {
+    /// <summary>The example prices were used.</summary>
+    public static readonly FindingCode PricesInvented = new(
+        "prices-invented", Severity.Warning,
+        "Costs rest on the shipped example prices, which are invented.",
+        "Give a table of prices that are paid near you ([culvert] unit_prices).");
+
     /// <summary>No size because the watershed runs off the terrain.</summary>
     public static readonly FindingCode SizeWithheld = new(
         "size-withheld-edge-contact", Severity.Error, "No size was issued: the watershed runs off the terrain model, so its area and flow are lower bounds.",

@@ -111,6 +111,9 @@ public sealed record StudySettings
     /// <summary>What may be built.</summary>
     public required CulvertCatalogue Catalogue { get; init; }
 
+    /// <summary>Unit prices; null to seek the least barrel area.</summary>
+    public UnitPrices? Prices { get; init; }
+
     /// <summary>What a culvert must meet.</summary>
     public required SizingCriteria Criteria { get; init; }
 

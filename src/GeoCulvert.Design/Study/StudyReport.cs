@@ -85,7 +85,11 @@ public sealed record SheetCriterion(
 /// <param name="OutletVelocityMPerS">Outlet velocity at the design flood.</param>
 /// <param name="Status">"chosen", or the reason it lost.</param>
 public sealed record SheetOption(
-    string Culvert, double BarrelAreaM2, double HeadwaterElevationM, double HeadwaterOverRise, double OutletVelocityMPerS, string Status);
+    string Culvert, double BarrelAreaM2, double HeadwaterElevationM, double HeadwaterOverRise, double OutletVelocityMPerS, string Status)
+{
+    /// <summary>Installed cost; null without prices.</summary>
+    public double? Cost { get; init; }
+}
 
 /// <summary>Everything a sheet of one crossing prints, in SI.</summary>
 public sealed record CrossingSheet

@@ -45,7 +45,8 @@ public class CulvertSizingTests
         var outcome = CulvertSizing.Choose(request);
         Assert.Equal(best?.Size, outcome.Chosen?.Choice.SizeText);
         Assert.Equal(best?.Count, outcome.Chosen?.Barrels.Count);
-        Assert.Equal(request.Catalogue.Barrels.Count * 3, outcome.Options.Count);
+        // Everything that comes before the choice has its reason; nothing of it meets all.
+        Assert.All(outcome.Options.TakeWhile(o => !ReferenceEquals(o, outcome.Chosen)), o => Assert.Contains(o.Criteria, c => !c.IsMet));
         Assert.Equal(outcome.Options.Select(o => o.Description), CulvertSizing.Choose(request).Options.Select(o => o.Description)); // the same order again
     }
 
@@ -53,15 +54,14 @@ public class CulvertSizingTests
     public void EachCriterionRejectsByItself()
     {
         var plain = CulvertSizing.Choose(Request(new SizingCriteria { LargestHeadwaterRatio = 1.5 })).Chosen!;
-        var largest = CulvertSizing.Choose(Request(new SizingCriteria { LargestHeadwaterRatio = 1.5 })).Options.Max(o => o.Barrels.AreaM2);
-        Assert.True(plain.Barrels.AreaM2 < largest);
 
         void Rejects(string name, SizingRequest request)
         {
             var outcome = CulvertSizing.Choose(request);
             var former = outcome.Options.Single(o => o.Description == plain.Description);
-            Assert.Equal([name], former.Criteria.Where(c => !c.IsMet).Select(c => c.Name));
-            Assert.Contains(name, outcome.Chosen is null ? former.Criteria.Single(c => !c.IsMet).Name : outcome.Reason(former), StringComparison.Ordinal);
+            Assert.Contains(former.Criteria, c => !c.IsMet && (c.Name == name || !former.IsRated));
+            Assert.Equal([name], CulvertSizing.Rate(request, former.Choice, former.Barrels.Count).Criteria.Where(c => !c.IsMet).Select(c => c.Name));
+            if (former.IsRated) Assert.Contains(name, outcome.Chosen is null ? former.Criteria.Single(c => !c.IsMet).Name : outcome.Reason(former), StringComparison.Ordinal);
             Assert.NotEqual(plain.Description, outcome.Chosen?.Description);
         }
 
@@ -121,5 +121,66 @@ public class CulvertSizingTests
         Assert.Equal(3.6576, all.Where(b => b.Shape == "circle").Max(b => b.Section.RiseM), 1e-12); // 144 in
         Assert.Equal(3.6576, all[^1].Section.SpanM, 1e-12); // 12 x 12 ft
         Assert.Equal(3.6576, all[^1].Section.RiseM, 1e-12);
+    }
+
+    [Fact]
+    public void TheSearchFindsWhatAPlainScanFindsOnRandomJobs()
+    {
+        var catalogue = CulvertCatalogue.Build([Round, InletCatalogue.Find("hds5-1-3", "test"), Square], ["circle", "box"], 0.013, null, 4);
+        var random = new Random(20261201);
+        double Between(double low, double high) => low + ((high - low) * random.NextDouble());
+        var prices = UnitPrices.Example;
+        int fits = 0, rated = 0, seen = 0;
+        for (var i = 0; i < 600; i++)
+        {
+            var flow = Math.Exp(Between(Math.Log(0.05), Math.Log(150)));
+            var criteria = new SizingCriteria
+            {
+                LargestHeadwaterRatio = Between(0.8, 2), FreeboardM = Between(0, 0.6), SmallestRiseM = Between(0.3, 0.7), SmallestCoverM = Between(0, 0.5),
+                LargestOutletVelocityMPerS = random.Next(3) == 0 ? Between(2, 6) : null,
+                LargestOvertoppingDepthM = random.Next(3) == 0 ? Between(0, 0.3) : null,
+                HighestHeadwaterElevationM = random.Next(4) == 0 ? 100 + Between(0.5, 3) : null,
+            };
+            var request = new SizingRequest(
+                catalogue, criteria, flow, flow * Between(1, 2), Between(8, 90), 100, 100 - Between(-0.1, 2.5), new FixedTailwater(98 + Between(0, 3)),
+                random.Next(5) == 0 ? null : RoadCrest.Level(100 + Between(0.6, 6), Between(20, 100), 9, RoadSurface.Paved))
+            {
+                Prices = i % 2 == 0 ? prices : null,
+            };
+            var all = catalogue.Barrels.SelectMany((b, k) => Enumerable.Range(1, 4).Select(n => (Option: CulvertSizing.Rate(request, b, n), Index: k)));
+            var plain = all.Where(o => o.Option.MeetsAll && (request.Prices is null || o.Option.Cost is not null))
+                .OrderBy(o => request.Prices is null ? 0 : o.Option.Cost).ThenBy(o => Math.Round(o.Option.Barrels.AreaM2, 9)).ThenBy(o => o.Option.Barrels.Count).ThenBy(o => o.Index)
+                .Select(o => o.Option.Description).FirstOrDefault();
+            var outcome = CulvertSizing.Choose(request);
+            Assert.True(plain == outcome.Chosen?.Description, $"job {i}: {plain} by the scan, {outcome.Chosen?.Description} by the search");
+            if (plain is null) continue;
+            fits++;
+            rated += outcome.Options.Count(o => o.IsRated);
+            seen += outcome.Options.Count;
+            // What the search says of the choice holds when it is rated again from the record alone.
+            var again = CulvertHydraulics.Rate(new CulvertSite(outcome.Chosen!.Barrels, request.Tailwater, request.Road), flow);
+            Assert.True(again.HeadwaterOverRise <= criteria.LargestHeadwaterRatio + 1e-9);
+        }
+
+        Assert.True(fits > 150, $"{fits} jobs with an answer");
+        Assert.True(rated < seen, "the screen spares nothing");
+    }
+
+    [Fact]
+    public void CostIsBarrelsTimesLengthAndTwoEndsEach()
+    {
+        var table = PublishedTable.Parse("prices", "shape,size,price_per_m,price_per_end\ncircle,48 in,300,1000\ncircle, 24 IN ,100,400\n");
+        var prices = UnitPrices.Read(table);
+        var catalogue = CulvertCatalogue.Build([Round], ["circle"], 0.012, null, 3);
+        var four = catalogue.Barrels.First(b => b.SizeText == "48 in");
+        Assert.Equal(2 * ((300 * 30) + 2000), prices.Of(four, 2, 30)!.Value, 9);
+        Assert.Equal((100 * 30) + 800, prices.Of(catalogue.Barrels.First(b => b.SizeText == "24 in"), 1, 30)!.Value, 9);
+        Assert.Null(prices.Of(catalogue.Barrels.First(b => b.SizeText == "36 in"), 1, 30));
+
+        // Prices decide: a dear single pipe loses to two cheap ones.
+        var dear = UnitPrices.Read(PublishedTable.Parse("p", "shape,size,price_per_m,price_per_end\ncircle,48 in,5000,0\ncircle,36 in,100,0\n"));
+        var outcome = CulvertSizing.Choose(Request(new SizingCriteria(), flow: 2, catalogue: catalogue) with { Prices = dear });
+        Assert.Equal("2 x 36 in circle, hds5-1-1", outcome.Chosen!.Description);
+        Assert.Contains("3 problems", string.Concat(Assert.Throws<InputException>(() => UnitPrices.Read(PublishedTable.Parse("p", "shape,size,price_per_m,price_per_end\ncircle,48 in,-1,0\ncircle,36 in,1,0\ncircle,36 in,2,0\ncircle,30 in,x,0\n"))).Problems.Count, " problems"), StringComparison.Ordinal);
     }
 }
