@@ -113,23 +113,6 @@ public static class ElevationReader
         return (crs!, options.VerticalUnitM ?? unit!.Value);
     }
 
-    /// <summary>Reads classes (land cover, soils) onto the grid of a terrain model by the nearest cell; <see cref="int.MinValue"/> where there is none.</summary>
-    public static Grid<int> ReadClasses(RasterSource source, GridFrame frame, WorkingPlane plane)
-    {
-        ArgumentNullException.ThrowIfNull(source);
-        ArgumentNullException.ThrowIfNull(plane);
-        if (source.Crs is null) throw new InputException(source.Path, "no coordinate system", "a raster that says its own");
-        var unit = plane.Crs.LinearUnitM;
-        using Crs from = source.Crs.Horizontal(), to = plane.Crs.Horizontal();
-        using var warped = source.Warped(
-            "-s_srs", from.Wkt, "-t_srs", to.Wkt, "-r", "near", "-ot", "Int32", "-dstnodata", "-2147483648",
-            "-te", Say(frame.West / unit), Say(frame.South / unit), Say(frame.East / unit), Say(frame.North / unit),
-            "-ts", Say(frame.Columns), Say(frame.Rows));
-        var grid = NewGrid<int>(frame, source.Path);
-        warped.ReadWindow(0, 0, frame.Columns, frame.Rows, grid.Cells);
-        return grid;
-    }
-
     private static (double? InM, string? UnknownWord) FileUnit(RasterSource source)
     {
         if (source.Crs?.VerticalUnitM is { } compound) return (compound, null);

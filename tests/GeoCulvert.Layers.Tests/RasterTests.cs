@@ -115,14 +115,35 @@ public class RasterTests
     }
 
     [Fact]
-    public void ClassesAreTakenFromTheNearestCell()
+    public void ARasterInThePlaneKeepsItsOwnCells()
     {
         var folder = Files.NewFolder();
         var path = Files.Raster(folder, "c", "11 21\n41 81", "EPSG:26912", 20);
         using var source = RasterSource.Open(path);
-        var grid = ElevationReader.ReadClasses(source, new GridFrame(6, 4, 430000, 4514040, 10, 10), Files.Utm12());
-        Assert.Equal([11, 11, 21, 21, int.MinValue, int.MinValue], grid.Cells[..6]);
-        Assert.Equal([41, 41, 81, 81, int.MinValue, int.MinValue], grid.Cells[18..]);
+        // The terrain's first column of 10 m lies in the raster's first column; nothing of the second is needed.
+        var grid = OverlayReader.Classes(source, new GridFrame(1, 4, 430000, 4514040, 10, 10), Files.Utm12());
+        Assert.Equal(new GridFrame(1, 2, 430000, 4514040, 20, 20), grid.Frame);
+        Assert.Equal([11, 41], grid.Cells);
+        Assert.Equal([11f, 21, 41, 81], OverlayReader.Values(source, new GridFrame(6, 4, 430000, 4514040, 10, 10), Files.Utm12()).Cells);
+        // Nothing in common: one cell without a class.
+        Assert.Equal([int.MinValue], OverlayReader.Classes(source, new GridFrame(2, 2, 440000, 4514040, 10, 10), Files.Utm12()).Cells);
+    }
+
+    [Fact]
+    public void ARasterOfAnotherProjectionIsSampledInPartsOfACell()
+    {
+        // Four cells of a quarter degree, about 112 to 111.5 west and 40.4 to 40.9 north.
+        var folder = Files.NewFolder();
+        var path = Files.Raster(folder, "g", "11 21\n41 81", "EPSG:4269", 0.25, x: -112.0, y: 40.4);
+        using var source = RasterSource.Open(path);
+        // Cells of 40 km against about 24 km: 2 x 40 / 24, so 4 parts a side.
+        var frame = new GridFrame(1, 1, 420000, 4520000, 40000, 40000);
+        var grid = OverlayReader.Classes(source, frame, Files.Utm12());
+        Assert.Equal(4, grid.Frame.Columns);
+        Assert.Equal((10000.0, 420000.0, 4520000.0), (grid.Frame.CellWidthM, grid.Frame.West, grid.Frame.North));
+        Assert.All(grid.Cells, c => Assert.Contains(c, (int[])[11, 21, 41, 81, int.MinValue]));
+        Assert.Contains(11, grid.Cells);
+        Assert.Contains(float.NaN, OverlayReader.Values(source, frame with { West = 300000 }, Files.Utm12()).Cells);
     }
 
     [Fact]

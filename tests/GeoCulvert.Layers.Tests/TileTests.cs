@@ -42,7 +42,7 @@ public class TileTests
         Retype("a", "Byte");
         Retype("b", "Byte");
         using var source = RasterSource.OpenMany([_folder]);
-        var grid = ElevationReader.ReadClasses(source, new GridFrame(5, 2, 430000, 4514020, 10, 10), Files.Utm12());
+        var grid = OverlayReader.Classes(source, new GridFrame(5, 2, 430000, 4514020, 10, 10), Files.Utm12());
         Assert.Equal([0, 2, int.MinValue, 7, 8, 3, 4, int.MinValue, 9, 10], grid.Cells);
     }
 

@@ -40,7 +40,7 @@ public class VerticalTests
     public void ClassesAreNeverConverted(string crs, string plane)
     {
         using var source = RasterSource.Open(Files.Raster(Files.NewFolder(), "c", "41 41\n41 41", crs, 20));
-        var grid = ElevationReader.ReadClasses(source, new GridFrame(4, 4, 430000, 4514040, 10, 10), new WorkingPlane(Crs.Parse(plane)));
+        var grid = OverlayReader.Classes(source, new GridFrame(4, 4, 430000, 4514040, 10, 10), new WorkingPlane(Crs.Parse(plane)));
         Assert.All(grid.Cells, c => Assert.Equal(41, c));
     }
 

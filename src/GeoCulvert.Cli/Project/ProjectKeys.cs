@@ -10,7 +10,7 @@ internal static class ProjectKeys
         ("terrain", "the terrain model"),
         ("road", "a road alignment; repeat the table for more roads"),
         ("crossings", "where water crosses the road: found along the roads, or given as points"),
-        ("cover", "land cover and soil groups for the runoff coefficient"),
+        ("cover", "land cover and soil groups for the runoff coefficient; other rasters to average"),
         ("rainfall", "rainfall intensity by duration and return period"),
         ("flow", "design flow"),
         ("culvert", "what may be built"),
@@ -72,6 +72,7 @@ internal static class ProjectKeys
         new("cover", "land_cover", KeyKind.Path, null, "raster of land-cover codes"),
         new("cover", "soil_group", KeyKind.Path, null, "raster of hydrologic soil groups: 1 = A, 2 = B, 3 = C, 4 = D, 5 = A/D, 6 = B/D, 7 = C/D"),
         new("cover", "lookup", KeyKind.Path, null, "your own table of runoff coefficients by land cover and soil group; default: the table shipped"),
+        new("cover", "means", KeyKind.Paths, null, "rasters whose area-weighted mean over every watershed is wanted, for example annual rainfall"),
 
         new("cover", "curve_numbers", KeyKind.Path, null, "your own table of curve numbers by land cover and soil group; default: the table shipped"),
         new("cover", "dual_soil_group", KeyKind.Choice, "\"undrained\"", "which letter of a dual soil group (A/D, B/D, C/D) counts for curve numbers") { Words = ["undrained", "drained"] },

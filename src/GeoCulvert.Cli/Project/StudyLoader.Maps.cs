@@ -173,8 +173,29 @@ internal sealed partial class StudyLoader
             using var source = RasterSource.Open(path);
             _files.Add(InputFacts.Of(table.Text(key)!, path, key == "land_cover" ? "land cover" : "soil group", source.Crs?.Label ?? ""));
             if (source.Crs is null) throw new InputException(_project.Place(table, key), $"'{table.Text(key)}' without a coordinate system", "a raster that says its own");
-            return frame is null || plane is null || checkOnly ? new Grid<int>(new GridFrame(1, 1, 0, 0, 1, 1)) : ElevationReader.ReadClasses(source, frame.Value, plane);
+            return frame is null || plane is null || checkOnly ? new Grid<int>(new GridFrame(1, 1, 0, 0, 1, 1)) : OverlayReader.Classes(source, frame.Value, plane);
         });
+    }
+
+    private List<StudyRaster> Rasters(GridFrame? frame, WorkingPlane? plane, bool checkOnly)
+    {
+        var table = _project["cover"];
+        var rasters = new List<StudyRaster>();
+        foreach (var shown in table.Texts("means"))
+        {
+            _ = Try(() =>
+            {
+                var name = Path.GetFileNameWithoutExtension(shown);
+                if (rasters.Any(r => r.Name == name)) throw new InputException(_project.Place(table, "means"), $"two rasters named '{name}'", "files with names of their own: results know them by name");
+                using var source = RasterSource.Open(_project.Full(shown));
+                _files.Add(InputFacts.Of(shown, _project.Full(shown), "raster", source.Crs?.Label ?? ""));
+                if (source.Crs is null) throw new InputException(_project.Place(table, "means"), $"'{shown}' without a coordinate system", "a raster that says its own");
+                rasters.Add(new(name, frame is null || plane is null || checkOnly ? new Grid<float>(new GridFrame(1, 1, 0, 0, 1, 1)) : OverlayReader.Values(source, frame.Value, plane)));
+                return "";
+            });
+        }
+
+        return rasters;
     }
 
     private static IEnumerable<LineString> Lines(Geometry geometry) => geometry switch

@@ -64,13 +64,19 @@ internal sealed partial class StudyLoader
         var catalogue = Catalogue();
         _prices = Prices();
         var overrides = Try(() => TextFile("crossings", "overrides", "overrides") is { } t ? Overrides.Read(t.Name, t.Text) : Overrides.None) ?? Overrides.None;
-        var coefficients = Try(() => TextFile("cover", "lookup", "cover lookup") is { } t ? RunoffCoefficientTable.From(PublishedTable.Parse(t.Name, t.Text, "cover_id", "name", "C_A", "C_B", "C_C", "C_D"), null) : RunoffCoefficientTable.Published);
+        var covers = Try(() =>
+        {
+            if (TextFile("cover", "lookup", "cover lookup") is not { } t) return Tuple.Create(RunoffCoefficientTable.Published, CoverClasses.Published);
+            var table = PublishedTable.Parse(t.Name, t.Text, "cover_id", "name", "C_A", "C_B", "C_C", "C_D");
+            return Tuple.Create(RunoffCoefficientTable.From(table, null), CoverClasses.From(table));
+        });
         var dual = _project["cover"].Text("dual_soil_group") == "drained" ? DualSoilGroup.Drained : DualSoilGroup.Undrained;
         var curveNumbers = Try(() => TextFile("cover", "curve_numbers", "curve numbers") is { } t
             ? CurveNumberTable.From(PublishedTable.Parse(t.Name, t.Text, "cover_id", "name", "CN_A", "CN_B", "CN_C", "CN_D"), dual)
             : CurveNumberTable.PublishedWith(dual));
         var landCover = Classes("land_cover", elevation?.Elevation.Frame, plane, checkOnly);
         var soilGroup = Classes("soil_group", elevation?.Elevation.Frame, plane, checkOnly);
+        var rasters = Rasters(elevation?.Elevation.Frame, plane, checkOnly);
         if (_project.Roads.Count == 0 && points is null && !_project["crossings"].Has("points"))
             _problems.Add(new InputProblem(_shownName, "neither a road nor given crossings", "a [[road]] with file = \"...\", or [crossings] points = \"...\""));
         NeedCoefficient(landCover is not null || _project["cover"].Has("land_cover"));
@@ -85,8 +91,10 @@ internal sealed partial class StudyLoader
             KnownCulverts = culverts ?? [],
             LandCover = landCover,
             SoilGroup = soilGroup,
-            Coefficients = coefficients!,
+            Coefficients = covers!.Item1,
+            CoverClasses = covers.Item2,
             CurveNumbers = curveNumbers!,
+            Rasters = rasters,
             Overrides = overrides,
         };
         var study = _project["study"];

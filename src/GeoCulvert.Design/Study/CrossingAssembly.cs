@@ -14,13 +14,13 @@ public static class CrossingAssembly
 
     /// <summary>Builds the result of one crossing.</summary>
     public static CrossingResult Build(
-        Crossing crossing, Watershed watershed, FlowResult flow, CulvertStageResult culvert, string? downstreamId, IReadOnlyList<Finding> findings, UnitSystem units)
+        Crossing crossing, Watershed watershed, (LandFigures Total, LandFigures Local) figures, FlowResult flow, CulvertStageResult culvert, string? downstreamId, IReadOnlyList<Finding> findings, UnitSystem units)
     {
         ArgumentNullException.ThrowIfNull(crossing);
         ArgumentNullException.ThrowIfNull(watershed);
         ArgumentNullException.ThrowIfNull(flow);
         ArgumentNullException.ThrowIfNull(culvert);
-        var land = Land(watershed, downstreamId);
+        var land = Land(watershed, figures.Total, figures.Local, downstreamId);
         var chosen = culvert.Outcome?.Chosen;
         var rating = chosen is null ? [] : Rating(chosen, flow);
         var options = culvert.Outcome is { } o ? Options(o) : [];
@@ -58,7 +58,7 @@ public static class CrossingAssembly
         _ => "stream",
     };
 
-    private static WatershedResult Land(Watershed watershed, string? downstreamId)
+    private static WatershedResult Land(Watershed watershed, LandFigures totalFigures, LandFigures localFigures, string? downstreamId)
     {
         var (total, local) = (watershed.Total, watershed.Local);
         var path = total.LongestFlowPath;
@@ -66,6 +66,8 @@ public static class CrossingAssembly
         {
             Outline = total.Outline.Polygon,
             LocalOutline = local.Outline.Polygon,
+            Total = totalFigures,
+            Local = localFigures,
             AreaM2 = total.AreaM2,
             LocalAreaM2 = local.AreaM2,
             PerimeterM = total.Outline.PerimeterM,

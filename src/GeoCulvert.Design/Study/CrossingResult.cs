@@ -25,6 +25,12 @@ public sealed record WatershedResult
     /// <summary>Local watershed outline: what drains here without passing another crossing.</summary>
     public required Geometry LocalOutline { get; init; }
 
+    /// <summary>All that is known of the total watershed.</summary>
+    public required LandFigures Total { get; init; }
+
+    /// <summary>All that is known of the local watershed.</summary>
+    public required LandFigures Local { get; init; }
+
     /// <summary>Total area, cells times cell area, m2.</summary>
     public required double AreaM2 { get; init; }
 

@@ -78,7 +78,7 @@ public static class DrainageStudy
 
             var downstream = idOfOutlet.GetValueOrDefault(watershed.ParentOutlet);
             var findings = doubts.Select(f => f.At(crossing.Id)).DistinctBy(f => (f.Code, f.Text)).OrderByDescending(f => f.Severity).ToList();
-            results.Add(CrossingAssembly.Build(crossing, watershed, flow, culvert, downstream, findings, settings.Units));
+            results.Add(CrossingAssembly.Build(crossing, watershed, catchments.Land(watershed), flow, culvert, downstream, findings, settings.Units));
             progress.Report((i + 1.0) / crossings.Count);
         }
 

@@ -66,18 +66,10 @@ public static class ResultLayers
         "watersheds", "Watersheds", "All the land that drains to a crossing, through other crossings too.", LayerGeometry.Polygon, c => c.Watershed.Outline,
         [
             Id<CrossingResult>(c => c.CrossingId),
-            Real<CrossingResult>("area", QuantityKind.Area, "Area", "Cells times cell area.", c => c.Watershed.AreaM2),
+            Real<CrossingResult>("area", QuantityKind.Area, "Area", "Cells times cell area, not the area of the drawn outline where that is smoothed.", c => c.Watershed.AreaM2),
             Real<CrossingResult>("local_area", QuantityKind.Area, "Local area", "The part that reaches the crossing without passing another.", c => c.Watershed.LocalAreaM2),
             Text<CrossingResult>("downstream_crossing_id", "Next downstream", "Crossing that this one drains to, if any.", c => c.Watershed.DownstreamCrossingId),
-            Real<CrossingResult>("perimeter", QuantityKind.Length, "Perimeter", "Length of the outline along cell edges.", c => c.Watershed.PerimeterM),
-            Real<CrossingResult>("centroid_x", QuantityKind.None, "Centroid x", "In the coordinate system of the layer.", c => c.Watershed.Centroid.X),
-            Real<CrossingResult>("centroid_y", QuantityKind.None, "Centroid y", "In the coordinate system of the layer.", c => c.Watershed.Centroid.Y),
-            Real<CrossingResult>("edge_contact_share", QuantityKind.Share, "Edge contact", "Share of the boundary on the edge of the terrain or on nodata.", c => c.Watershed.EdgeContactShare),
-            Real<CrossingResult>("mean_slope", QuantityKind.Slope, "Basin slope", "Mean slope of the ground.", c => c.Watershed.MeanSlopeMPerM),
-            Real<CrossingResult>("mean_elevation", QuantityKind.Length, "Mean elevation", "Mean elevation of the ground.", c => c.Watershed.MeanElevationM),
-            Real<CrossingResult>("relief", QuantityKind.Length, "Relief", "Highest less lowest elevation.", c => c.Watershed.ReliefM),
-            Real<CrossingResult>("flow_path_length", QuantityKind.Length, "Longest flow path", "Length of the longest flow path from the divide.", c => c.Watershed.FlowPathLengthM),
-            Real<CrossingResult>("slope_10_85", QuantityKind.Slope, "10-85 slope", "Slope of the longest flow path between 10 % and 85 % of its length above the crossing.", c => c.Watershed.FlowPathSlope1085MPerM),
+            .. LandLayers.Columns(c => c.Watershed.Total),
             Real<CrossingResult>("runoff_coefficient", QuantityKind.None, "C", "Runoff coefficient of the rational method at the design flood.", c => c.Flow?.Catchment.RunoffCoefficient?.For(c.DesignReturnPeriodYr)),
         ]);
 
@@ -86,8 +78,10 @@ public static class ResultLayers
         "local_watersheds", "Local watersheds", "The land that reaches a crossing without passing another crossing; they tile the total watersheds.", LayerGeometry.Polygon, c => c.Watershed.LocalOutline,
         [
             Id<CrossingResult>(c => c.CrossingId),
-            Real<CrossingResult>("area", QuantityKind.Area, "Area", "Cells times cell area.", c => c.Watershed.LocalAreaM2),
+            Real<CrossingResult>("area", QuantityKind.Area, "Area", "Cells times cell area, not the area of the drawn outline where that is smoothed.", c => c.Watershed.LocalAreaM2),
             Text<CrossingResult>("downstream_crossing_id", "Next downstream", "Crossing that this one drains to, if any.", c => c.Watershed.DownstreamCrossingId),
+            .. LandLayers.Columns(c => c.Watershed.Local),
+            Real<CrossingResult>("runoff_coefficient", QuantityKind.None, "C", "Runoff coefficient of the local land cover at the design flood; empty without a land cover.", c => c.Watershed.Local.Cover?.RunoffCoefficient is { } v ? (c.DesignReturnPeriodYr >= 25 ? v.From25Yr : v.Below25Yr) : null),
         ]);
 
     /// <summary>Longest flow paths.</summary>
@@ -98,6 +92,7 @@ public static class ResultLayers
             Real<CrossingResult>("length", QuantityKind.Length, "Length", "From the divide to the crossing.", c => c.Watershed.FlowPathLengthM),
             Real<CrossingResult>("slope_10_85", QuantityKind.Slope, "10-85 slope", "Between 10 % and 85 % of the length above the crossing.", c => c.Watershed.FlowPathSlope1085MPerM),
             Real<CrossingResult>("slope_end_to_end", QuantityKind.Slope, "End-to-end slope", "Fall over length.", c => c.Watershed.FlowPathEndToEndSlopeMPerM),
+            Real<CrossingResult>("slope_equal_area", QuantityKind.Slope, "Equal-area slope", "Slope of the line from the crossing with as much area under it as the profile.", c => c.Watershed.Total.Ground.LongestFlowPath?.EqualAreaSlopeMPerM),
         ]);
 
     /// <summary>Barrel lines.</summary>

@@ -31,11 +31,17 @@ public sealed record StudyInputs
     /// <summary>Crossings of the run before, whose ids are kept; empty for a first run.</summary>
     public IReadOnlyList<FormerCrossing> Former { get; init; } = [];
 
-    /// <summary>Land-cover codes on the terrain's grid, or null.</summary>
+    /// <summary>Land-cover codes on a grid of their own in the plane of the terrain, or null.</summary>
     public Grid<int>? LandCover { get; init; }
 
-    /// <summary>Soil groups on the terrain's grid (1-4 = A-D, 5-7 = A/D, B/D, C/D), or null.</summary>
+    /// <summary>Soil groups on a grid of their own (1-4 = A-D, 5-7 = A/D, B/D, C/D), or null.</summary>
     public Grid<int>? SoilGroup { get; init; }
+
+    /// <summary>Rasters whose means over every watershed are wanted.</summary>
+    public IReadOnlyList<StudyRaster> Rasters { get; init; } = [];
+
+    /// <summary>Names, impervious shares and storage of the land covers.</summary>
+    public CoverClasses CoverClasses { get; init; } = CoverClasses.Published;
 
     /// <summary>Runoff coefficients by cover and soil group.</summary>
     public RunoffCoefficientTable Coefficients { get; init; } = RunoffCoefficientTable.Published;
@@ -170,6 +176,8 @@ public sealed record StudyResult(
         ResultLayers.Culverts.Build(Crossings.Where(c => c.Barrel?.Line is not null), units),
         TerrainLayers.Openings.Build(Openings, units),
         TerrainLayers.Untouched.Build(Untouched, units),
+        LandLayers.CoverAreas.Build(Crossings.SelectMany(c => (c.Watershed.Total.Cover?.Areas ?? []).Select(a => (c.CrossingId, a))), units),
+        LandLayers.RasterMeans.Build(Crossings.SelectMany(c => c.Watershed.Total.Means.Zip(c.Watershed.Local.Means, (t, l) => (c.CrossingId, t, l))), units),
         ResultLayers.Flows.Build(Crossings.SelectMany(c => c.Sheet.Flows.Select(f => (c.CrossingId, f))), units),
         ResultLayers.Options.Build(Crossings.SelectMany(c => c.Options.Select((o, i) => (c.CrossingId, i + 1, o))), units),
         ResultLayers.Ratings.Build(Crossings.SelectMany(c => c.Rating.Select(p => (c.CrossingId, p))), units),

@@ -24,32 +24,6 @@ public readonly record struct ZoneSum(long Cells, long ValueCells, double Sum, d
         new(a.Cells + b.Cells, a.ValueCells + b.ValueCells, a.Sum + b.Sum, Math.Min(a.Least, b.Least), Math.Max(a.Most, b.Most));
 }
 
-/// <summary>Cells of each class in a watershed.</summary>
-/// <param name="CellsByClass">Cells by class code, by rising code.</param>
-/// <param name="MissingCells">Cells without a class.</param>
-public sealed record ClassCells(IReadOnlyDictionary<int, long> CellsByClass, long MissingCells)
-{
-    /// <summary>All cells.</summary>
-    public long Cells => CellsByClass.Values.Sum() + MissingCells;
-
-    /// <summary>Share of the cells without a class, 0-1.</summary>
-    public double MissingShare => Cells > 0 ? (double)MissingCells / Cells : 0;
-
-    /// <summary>Share of a class in the cells that have one, 0-1.</summary>
-    public double ShareOf(int code) => Cells > MissingCells ? CellsByClass.GetValueOrDefault(code) / (double)(Cells - MissingCells) : 0;
-
-    /// <summary>The cells of both.</summary>
-    public static ClassCells Add(ClassCells a, ClassCells b)
-    {
-        ArgumentNullException.ThrowIfNull(a);
-        ArgumentNullException.ThrowIfNull(b);
-        var sum = new SortedDictionary<int, long>();
-        foreach (var (code, cells) in a.CellsByClass) sum[code] = cells;
-        foreach (var (code, cells) in b.CellsByClass) sum[code] = sum.GetValueOrDefault(code) + cells;
-        return new(sum, a.MissingCells + b.MissingCells);
-    }
-}
-
 /// <summary>A value per outlet, local and total.</summary>
 /// <typeparam name="T">What is known of a watershed.</typeparam>
 public sealed record ByOutlet<T>(IReadOnlyList<T> Local, IReadOnlyList<T> Total);
@@ -57,9 +31,6 @@ public sealed record ByOutlet<T>(IReadOnlyList<T> Local, IReadOnlyList<T> Total)
 /// <summary>Sums over the cells of every watershed: one pass over the grid for the local ones, one pass over the tree for the totals.</summary>
 public static class ZonalSums
 {
-    /// <summary>Code of a cell without a class.</summary>
-    public const int NoClass = int.MinValue;
-
     /// <summary>Sums, least and largest values of an aligned grid; NaN cells count as missing.</summary>
     /// <exception cref="ArgumentException">The grids do not have the same rows and columns.</exception>
     public static ByOutlet<ZoneSum> Of(Grid<int> labels, OutletTree tree, Grid<float> values)
@@ -96,29 +67,6 @@ public static class ZonalSums
         var local = new ZoneSum[n];
         for (var k = 0; k < n; k++) local[k] = new(cells[k], valued[k], sum[k], least[k], most[k]);
         return new(local, tree.Accumulate(local, ZoneSum.Add));
-    }
-
-    /// <summary>Cells of each class of an aligned grid of codes; <see cref="NoClass"/> marks a cell without one. Pairs of classes are coded by the caller.</summary>
-    /// <exception cref="ArgumentException">The grids do not have the same rows and columns.</exception>
-    public static ByOutlet<ClassCells> Classes(Grid<int> labels, OutletTree tree, Grid<int> classes)
-    {
-        ArgumentNullException.ThrowIfNull(labels);
-        ArgumentNullException.ThrowIfNull(tree);
-        ArgumentNullException.ThrowIfNull(classes);
-        Aligned(labels, classes.Frame);
-        var counts = new Dictionary<int, long>[tree.Count];
-        for (var k = 0; k < counts.Length; k++) counts[k] = [];
-        for (var i = 0; i < labels.Cells.Length; i++)
-        {
-            var k = labels.Cells[i] - 1;
-            if (k < 0) continue;
-            var code = classes.Cells[i];
-            counts[k][code] = counts[k].GetValueOrDefault(code) + 1;
-        }
-
-        var local = counts.Select(c => new ClassCells(
-            new SortedDictionary<int, long>(c.Where(p => p.Key != NoClass).ToDictionary()), c.GetValueOrDefault(NoClass))).ToArray();
-        return new(local, tree.Accumulate(local, ClassCells.Add));
     }
 
     private static void Aligned(Grid<int> labels, GridFrame other)

@@ -28,6 +28,8 @@ public class FormatPageTests
         Add(page, ResultLayers.Streams);
         Add(page, ResultLayers.Roads);
         Add(page, ResultLayers.Culverts);
+        Add(page, LandLayers.CoverAreas);
+        Add(page, LandLayers.RasterMeans);
         Add(page, ResultLayers.Flows);
         Add(page, ResultLayers.Options);
         Add(page, ResultLayers.Ratings);

@@ -22,15 +22,15 @@ public class ZonalSumsTests
         var labels = new Grid<int>(frame, cells);
         var tree = new OutletTree(parent);
         var sums = ZonalSums.Of(labels, tree, new Grid<float>(frame, [.. values.Select(v => v == -9 ? float.NaN : v)]));
-        var classes = ZonalSums.Classes(labels, tree, new Grid<int>(frame, [.. values.Select(v => v == -9 ? ZonalSums.NoClass : v)]));
+        var classes = ZonalOverlay.Classes(labels, tree, new Grid<int>(frame, [.. values.Select(v => v == -9 ? ZonalOverlay.NoClass : v)]));
         for (var k = 0; k < Outlets; k++)
         {
             var own = Enumerable.Range(0, 80).Where(i => cells[i] > 0 && Drains(cells[i] - 1)).Select(i => values[i]).ToList();
             var there = own.Where(v => v != -9).ToList();
             Assert.Equal((own.Count, there.Count, there.Sum()), (sums.Total[k].Cells, sums.Total[k].ValueCells, sums.Total[k].Sum));
             if (there.Count > 0) Assert.Equal((there.Min(), there.Max()), (sums.Total[k].Least, sums.Total[k].Most));
-            Assert.Equal(own.Count - there.Count, classes.Total[k].MissingCells);
-            Assert.Equal(there.GroupBy(v => v).OrderBy(g => g.Key).Select(g => (g.Key, (long)g.Count())), classes.Total[k].CellsByClass.Select(p => (p.Key, p.Value)));
+            Assert.Equal(own.Count - there.Count, classes.Total[k].MissingCellCount);
+            Assert.Equal(there.GroupBy(v => v).OrderBy(g => g.Key).Select(g => (g.Key, (double)g.Count())), classes.Total[k].CellsByClass.Select(p => (p.Key, p.Value)));
             Assert.Equal(cells.Count(c => c == k + 1), sums.Local[k].Cells);
 
             bool Drains(int outlet)
