@@ -26,6 +26,7 @@ internal static class ProjectKeys
     [
         new("study", "name", KeyKind.Text, null, "name printed on every sheet; default: the name of the project file"),
         new("study", "units", KeyKind.Choice, "\"si\"", "system of units of the results, not of the inputs") { Words = ["si", "us"] },
+        new("study", "outlines", KeyKind.Choice, "\"cells\"", "outlines of watersheds along the edges of cells, or smoothed for drawing; areas and perimeters are those of the cells either way") { Words = ["cells", "smooth"] },
         new("study", "folder", KeyKind.Path, "\"results\"", "where results go"),
 
         new("terrain", "dem", KeyKind.Paths, null, "terrain model: a file, a list of files, a folder of tiles or a VRT"),

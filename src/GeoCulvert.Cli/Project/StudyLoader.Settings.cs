@@ -209,6 +209,7 @@ internal sealed partial class StudyLoader
         var (criteria, tailwater) = (_project["criteria"], _project["tailwater"]);
         return new StudySettings
         {
+            SmoothOutlines = _project["study"].Text("outlines") == "smooth",
             Units = _project["study"].Text("units") == "us" ? UnitSystem.Us : UnitSystem.Si,
             StreamAreaM2 = _project["terrain"].Needed("stream_area"),
             CrossDrainAreaM2 = _project["crossings"].Needed("cross_drain_area"),

@@ -32,7 +32,7 @@ public static class DrainageStudy
         var openings = CrossingStage.Results(opened, found.Crossings);
 
         // The land above every crossing, all in one pass.
-        var watersheds = stages.Run("watersheds", frame.Count, _ => WatershedSurvey.Survey(terrain, found.Crossings));
+        var watersheds = stages.Run("watersheds", frame.Count, _ => WatershedSurvey.Survey(terrain, found.Crossings, new() { SmoothOutlines = settings.SmoothOutlines }));
         cancel.ThrowIfCancellationRequested();
 
         // From land to flow, from flow to culvert.

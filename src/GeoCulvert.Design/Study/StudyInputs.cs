@@ -78,6 +78,9 @@ public sealed record StudySettings
     /// <summary>System of units of the results.</summary>
     public UnitSystem Units { get; init; } = UnitSystem.Si;
 
+    /// <summary>Whether outlines of watersheds are smoothed for drawing; areas and perimeters stay those of the cells.</summary>
+    public bool SmoothOutlines { get; init; }
+
     /// <summary>Drainage area at which a stream begins, m2.</summary>
     public double StreamAreaM2 { get; init; } = 1e5;
 

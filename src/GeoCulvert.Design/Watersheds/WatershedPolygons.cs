@@ -4,7 +4,7 @@ using NetTopologySuite.Geometries;
 namespace GeoCulvert.Design.Watersheds;
 
 /// <summary>The outline of one watershed.</summary>
-/// <param name="Polygon">Polygon, or MultiPolygon where cells touch at corners only; valid, along cell edges; empty when it has no cell.</param>
+/// <param name="Polygon">Polygon, or MultiPolygon where cells touch at corners only; valid; along cell edges, or smoothed for drawing; empty when it has no cell.</param>
 /// <param name="PerimeterM">Length of all its edges, holes included, m: along the cell edges, so longer than a smooth divide.</param>
 /// <param name="EdgeContactM">Length of the edges beyond which there is no terrain (grid edge or nodata), m.</param>
 public sealed record WatershedOutline(Geometry Polygon, double PerimeterM, double EdgeContactM)
@@ -29,13 +29,14 @@ public static class WatershedPolygons
     /// <param name="labels">0 for none, k + 1 for outlet k.</param>
     /// <param name="tree">The outlets' tree.</param>
     /// <param name="hasTerrain">Whether a cell (row-major index) has terrain; null when all have. Cells beyond the grid never have.</param>
+    /// <param name="smooth">Whether polygons are smoothed for drawing; perimeter and contact stay those of the cell edges.</param>
     /// <exception cref="ArgumentException">A label names no outlet of the tree.</exception>
-    public static WatershedOutlines Trace(Grid<int> labels, OutletTree tree, Func<int, bool>? hasTerrain = null)
+    public static WatershedOutlines Trace(Grid<int> labels, OutletTree tree, Func<int, bool>? hasTerrain = null, bool smooth = false)
     {
         ArgumentNullException.ThrowIfNull(labels);
         ArgumentNullException.ThrowIfNull(tree);
         var boundary = BoundaryArcs.Collect(labels, tree.Count, hasTerrain);
-        var stitching = new RingStitching(boundary, ArcShapes.AlongCells(boundary, labels.Frame));
+        var stitching = new RingStitching(boundary, smooth ? ArcShapes.Smoothed(boundary, labels.Frame) : ArcShapes.AlongCells(boundary, labels.Frame));
         var local = Outlines(labels.Frame, tree, boundary, stitching, null);
         return new(local, Outlines(labels.Frame, tree, boundary, stitching, local));
     }

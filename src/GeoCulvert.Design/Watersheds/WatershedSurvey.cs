@@ -11,6 +11,9 @@ public sealed record WatershedSettings
     /// <summary>Share of the perimeter without terrain beyond it above which the area is called a lower bound. Default 0: any contact.</summary>
     public double EdgeContactLimitShare { get; init; }
 
+    /// <summary>Whether outlines are smoothed for drawing; every figure stays that of the cells. Default: no.</summary>
+    public bool SmoothOutlines { get; init; }
+
     /// <summary>Fewer cells than this are called few. Default 50 (own rule).</summary>
     public int FewCells { get; init; } = 50;
 
@@ -82,7 +85,7 @@ public static class WatershedSurvey
         settings ??= new();
         var tree = new OutletTree(parent);
         var frame = labels.Frame;
-        var outlines = WatershedPolygons.Trace(labels, tree, cell => !float.IsNaN(elevation.Cells[cell]));
+        var outlines = WatershedPolygons.Trace(labels, tree, cell => !float.IsNaN(elevation.Cells[cell]), settings.SmoothOutlines);
         var heights = ZonalSums.Of(labels, tree, elevation);
         var slopes = ZonalSums.Of(labels, tree, cell => GroundSlope.At(elevation, cell));
         var columns = ZonalSums.Of(labels, tree, cell => cell % frame.Columns);
