@@ -60,6 +60,15 @@ internal sealed partial class StudyLoader
         var roads = plane is null ? NameRoadFiles() : Roads(plane, elevation?.Elevation.Frame);
         var points = plane is null ? NameFile("crossings", "points", "crossings") : Points(plane);
         var culverts = plane is null ? null : KnownCulverts(plane);
+        var inventory = plane is null ? null : Inventory(plane);
+        if (inventory is { } existing)
+        {
+            points = [.. points ?? [], .. existing.Points];
+            culverts = [.. culverts ?? [], .. existing.Lines];
+            if (points.GroupBy(p => p.Id).FirstOrDefault(g => g.Count() > 1) is { } twice)
+                _problems.Add(new InputProblem($"{_shownName}, [inventory] id", $"the id '{twice.Key}' in the inventory and in [crossings] points", "an id of its own for each crossing"));
+        }
+
         var flow = Flow();
         var catalogue = Catalogue();
         _prices = Prices();
@@ -77,7 +86,7 @@ internal sealed partial class StudyLoader
         var landCover = Classes("land_cover", elevation?.Elevation.Frame, plane, checkOnly);
         var soilGroup = Classes("soil_group", elevation?.Elevation.Frame, plane, checkOnly);
         var rasters = Rasters(elevation?.Elevation.Frame, plane, checkOnly);
-        if (_project.Roads.Count == 0 && points is null && !_project["crossings"].Has("points"))
+        if (_project.Roads.Count == 0 && points is null && !_project["crossings"].Has("points") && !_project["inventory"].Has("file"))
             _problems.Add(new InputProblem(_shownName, "neither a road nor given crossings", "a [[road]] with file = \"...\", or [crossings] points = \"...\""));
         NeedCoefficient(landCover is not null || _project["cover"].Has("land_cover"));
         if (_problems.Count > 0) throw new InputException(_problems);
@@ -89,6 +98,7 @@ internal sealed partial class StudyLoader
             Roads = roads,
             Points = points,
             KnownCulverts = culverts ?? [],
+            Inventory = inventory?.Barrels ?? [],
             LandCover = landCover,
             SoilGroup = soilGroup,
             Coefficients = covers!.Item1,

@@ -65,11 +65,15 @@ public sealed record SizingOption(
 /// <param name="Closest">When nothing fits: the option that fails by least.</param>
 public sealed record SizingOutcome(SizingOption? Chosen, IReadOnlyList<SizingOption> Options, SizingOption? Closest)
 {
-    /// <summary>Why an option was not chosen, or "chosen".</summary>
+    /// <summary>Whether the option is a culvert that is there, which was rated, not chosen.</summary>
+    public bool IsExisting { get; init; }
+
+    /// <summary>Why an option was not chosen, or "chosen"; of an existing culvert what it breaks, or that it meets all.</summary>
     public string Reason(SizingOption option)
     {
         ArgumentNullException.ThrowIfNull(option);
-        if (ReferenceEquals(option, Chosen)) return "chosen";
+        if (IsExisting && option.MeetsAll) return "existing; meets every criterion";
+        if (!IsExisting && ReferenceEquals(option, Chosen)) return "chosen";
         var broken = option.Criteria.Where(c => !c.IsMet).Select(c => $"{c.Name} {c.Value:0.00} beyond {c.Limit:0.00}{(option.IsRated ? "" : c.Origin)}").ToArray();
         if (broken.Length > 0) return string.Join("; ", broken);
         if (Chosen is null) return "";

@@ -33,6 +33,7 @@ public static class CrossingAssembly
             IsGiven = crossing.Origin == CrossingOrigin.Given,
             FoundBy = FoundBy(crossing.Origin),
             AlsoUnder = string.Join(", ", crossing.Over.Select(o => o.Road.Name).Where(n => n != crossing.Road?.Name).Distinct()),
+            Existing = culvert.Existing,
             Location = new Point(crossing.Point.X, crossing.Point.Y),
             Status = culvert.Status,
             DesignReturnPeriodYr = flow.Design.ReturnPeriodYr,

@@ -1,4 +1,5 @@
 using GeoCulvert.Design.Basis;
+using GeoCulvert.Design.Sizing;
 using NetTopologySuite.Geometries;
 
 namespace GeoCulvert.Design.Study;
@@ -8,6 +9,9 @@ public static class CrossingStatus
 {
     /// <summary>A culvert of the catalogue meets every criterion.</summary>
     public const string Sized = "sized";
+
+    /// <summary>An existing culvert was rated; whether it meets the criteria is said with it.</summary>
+    public const string Rated = "rated";
 
     /// <summary>No culvert of the catalogue meets every criterion.</summary>
     public const string NoSizeFits = "no size fits";
@@ -157,6 +161,9 @@ public sealed record CrossingResult
 
     /// <summary>Other roads over the same culvert; empty for none.</summary>
     public string AlsoUnder { get; init; } = "";
+
+    /// <summary>How the existing culvert stands; null without one.</summary>
+    public ExistingAssessment? Existing { get; init; }
 
     /// <summary>Where it is.</summary>
     public required Point Location { get; init; }

@@ -15,7 +15,11 @@ namespace GeoCulvert.Design.Study;
 /// <param name="Findings">Doubts.</param>
 /// <param name="IsRoadLevelAssumed">Whether the road level is the least that serves, because the terrain shows no embankment.</param>
 public sealed record CulvertStageResult(
-    string Status, CulvertLine Line, SizingRequest? Request, SizingOutcome? Outcome, IReadOnlyList<Finding> Findings, bool IsRoadLevelAssumed = false);
+    string Status, CulvertLine Line, SizingRequest? Request, SizingOutcome? Outcome, IReadOnlyList<Finding> Findings, bool IsRoadLevelAssumed = false)
+{
+    /// <summary>How the existing culvert stands; null without one.</summary>
+    public ExistingAssessment? Existing { get; init; }
+}
 
 /// <summary>Where a flow meets a barrel: line, road, tailwater, criteria, search.</summary>
 public static class CulvertStage
@@ -32,7 +36,14 @@ public static class CulvertStage
         ArgumentNullException.ThrowIfNull(flow);
         ArgumentNullException.ThrowIfNull(inputs);
         ArgumentNullException.ThrowIfNull(settings);
-        double? Given(string column) => inputs.Overrides.Of(crossing.Id, column);
+        var existing = inputs.Inventory.GetValueOrDefault(crossing.Id);
+        double? Given(string column) => inputs.Overrides.Of(crossing.Id, column) ?? column switch
+        {
+            "inlet_elevation" => existing?.InletElevationM,
+            "outlet_elevation" => existing?.OutletElevationM,
+            "length" => existing?.LengthM,
+            _ => null,
+        };
         CulvertLine Measure(double? roadElevationM) => CulvertLineSurvey.Measure(
             crossing, terrain.Direction, terrain.Accumulation, terrain.Elevation, filledDepth, new CrossingOverrides(crossing.Id)
             {
@@ -70,6 +81,7 @@ public static class CulvertStage
             settings.Catalogue, criteria, flow.Design.FlowM3PerS!.Value, flow.Check.FlowM3PerS!.Value, at.Length!.Value, at.InletElevation!.Value, at.OutletElevation!.Value,
             TailwaterStage.For(crossing, terrain, watershed.Total.AreaM2, at.OutletElevation.Value, settings.Tailwater, Given("tailwater_elevation"), doubts), road) { Prices = settings.Prices };
 
+        if (existing is not null) return Existing(existing, Ask(line, Crest(crossing, line), findings), line, flow, findings);
         var assumed = false;
         if (ShowsNoEmbankment(crossing, line, terrain, criteria) && CulvertSizing.Choose(Ask(line, null, [])).Chosen is { } first)
         {
@@ -99,6 +111,20 @@ public static class CulvertStage
         if (chosen.Design.OutletVelocityMPerS > HighVelocityMPerS)
             findings.Add(StudyFindings.OutletVelocityHigh.With($"{chosen.Design.OutletVelocityMPerS:0.0} m/s", chosen.Design.OutletVelocityMPerS, HighVelocityMPerS));
         return new CulvertStageResult(CrossingStatus.Sized, line, request, outcome, findings, assumed);
+    }
+
+    /// <summary>Rates a culvert that is there.</summary>
+    private static CulvertStageResult Existing(ExistingBarrels existing, SizingRequest request, CulvertLine line, FlowResult flow, List<Finding> findings)
+    {
+        findings.AddRange(existing.Findings);
+        if (existing.Choice is null) return new CulvertStageResult(CrossingStatus.NotComputed, line, null, null, findings);
+        var option = CulvertSizing.Rate(request, existing.Choice, existing.Barrels);
+        var floods = flow.Flows.Where(f => f.FlowM3PerS is not null).Select(f => (f.ReturnPeriodYr, f.FlowM3PerS!.Value)).ToList();
+        var assessment = ExistingCulvert.Assess(option.Design.Site, request.Criteria, floods);
+        findings.AddRange(option.Design.Findings.Concat(option.Check.Findings).DistinctBy(f => f.Code));
+        if (assessment.First is { } first)
+            findings.Add(InventoryFindings.Fails.With($"{first.Name} beyond {first.Limit:0.00} at the {first.FailsAtYr:G6}-year flood; capacity {first.FlowM3PerS:G3} m3/s", first.FailsAtYr));
+        return new CulvertStageResult(CrossingStatus.Rated, line, request, new SizingOutcome(option, [option], null) { IsExisting = true }, findings) { Existing = assessment };
     }
 
     /// <summary>

@@ -56,6 +56,8 @@ public static class ResultLayers
             Real<CrossingResult>("hw_over_d", QuantityKind.None, "HW/D", "Headwater depth over rise at the design flood.", c => c.Culvert?.HeadwaterOverRise),
             Real<CrossingResult>("outlet_velocity", QuantityKind.Velocity, "Outlet velocity", "Velocity at the outlet at the design flood.", c => c.Culvert?.OutletVelocityMPerS),
             Real<CrossingResult>("overtopping_return_period", QuantityKind.Years, "Overtopped at", "Shortest return period asked for at which the road is overtopped; empty when none.", c => c.Culvert?.OvertoppingReturnPeriodYr),
+            Text<CrossingResult>("first_failure", "First failure", "Criterion that an existing culvert breaks first; empty for new ones and where all hold.", c => c.Existing?.First?.Name),
+            Real<CrossingResult>("first_failure_return_period", QuantityKind.Years, "Fails at", "Shortest return period asked for at which an existing culvert breaks a criterion.", c => c.Existing?.First?.FailsAtYr),
             Real<CrossingResult>("cost", QuantityKind.None, "Cost", "Installed cost by the table of unit prices, in its currency; empty without one.", c => c.Culvert?.Cost),
             Whole<CrossingResult>("findings", "Findings", "Number of findings on the crossing.", c => c.Findings.Count),
             Text<CrossingResult>("first_finding", "First finding", "Code of the gravest finding.", c => c.Findings.Count > 0 ? c.Findings[0].Code : null),

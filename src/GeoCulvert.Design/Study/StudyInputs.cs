@@ -28,6 +28,9 @@ public sealed record StudyInputs
     /// <summary>Culverts known to be there; embankments are opened along them.</summary>
     public IReadOnlyList<KnownCulvert> KnownCulverts { get; init; } = [];
 
+    /// <summary>Existing culverts by crossing id; they are rated instead of sized.</summary>
+    public IReadOnlyDictionary<string, ExistingBarrels> Inventory { get; init; } = new Dictionary<string, ExistingBarrels>();
+
     /// <summary>Crossings of the run before, whose ids are kept; empty for a first run.</summary>
     public IReadOnlyList<FormerCrossing> Former { get; init; } = [];
 
@@ -184,6 +187,7 @@ public sealed record StudyResult(
         ResultLayers.Flows.Build(Crossings.SelectMany(c => c.Sheet.Flows.Select(f => (c.CrossingId, f))), units),
         ResultLayers.Options.Build(Crossings.SelectMany(c => c.Options.Select((o, i) => (c.CrossingId, i + 1, o))), units),
         ResultLayers.Ratings.Build(Crossings.SelectMany(c => c.Rating.Select(p => (c.CrossingId, p))), units),
+        TerrainLayers.Capacities.Build(Crossings.SelectMany(c => (c.Existing?.Capacities ?? []).Select(k => (c.CrossingId, k))), units),
         TerrainLayers.Changes.Build(Changes, units),
         ResultLayers.Findings.Build(Findings, units),
         ResultLayers.Run.Build(run, units),

@@ -1,8 +1,9 @@
 using GeoCulvert.Design.Basis;
+using GeoCulvert.Design.Sizing;
 
 namespace GeoCulvert.Design.Study;
 
-/// <summary>Layers of what was changed in the terrain, and of what differs from the run before.</summary>
+/// <summary>Layers of what was changed in the terrain, what existing culverts carry, and what differs from the run before.</summary>
 public static class TerrainLayers
 {
     /// <summary>Openings of embankments.</summary>
@@ -29,6 +30,18 @@ public static class TerrainLayers
             ResultLayers.Text<UntouchedWatershed>("crossing_id", "Crossing", "Crossing whose water passes the opening; empty when none does.", w => w.CrossingId),
             ResultLayers.Real<UntouchedWatershed>("area", QuantityKind.Area, "Area", "In the untouched terrain model.", w => w.AreaM2),
             ResultLayers.Real<UntouchedWatershed>("opened_area", QuantityKind.Area, "Area with openings", "With all openings.", w => w.OpenedAreaM2),
+        ]);
+
+    /// <summary>What existing culverts carry.</summary>
+    public static LayerDefinition<(string CrossingId, CriterionCapacity Capacity)> Capacities { get; } = new(
+        "capacities", "Capacities", "The flow at which an existing culvert just meets a criterion.", LayerGeometry.None, _ => null,
+        [
+            ResultLayers.Text<(string CrossingId, CriterionCapacity Capacity)>("crossing_id", "Crossing", "Id of the crossing.", r => r.CrossingId),
+            ResultLayers.Text<(string CrossingId, CriterionCapacity Capacity)>("criterion", "Criterion", "What is limited; overtopping is the lowest road level.", r => r.Capacity.Name),
+            ResultLayers.Real<(string CrossingId, CriterionCapacity Capacity)>("limit", QuantityKind.None, "Limit", "Its limit; SI.", r => r.Capacity.Limit),
+            ResultLayers.Real<(string CrossingId, CriterionCapacity Capacity)>("capacity", QuantityKind.Flow, "Capacity", "Largest flow that meets it; empty when no flow within reach breaks it.", r => r.Capacity.FlowM3PerS),
+            ResultLayers.Real<(string CrossingId, CriterionCapacity Capacity)>("capacity_return_period", QuantityKind.Years, "Return period", "Of that flow, between the floods asked for; empty outside them.", r => r.Capacity.ReturnPeriodYr),
+            ResultLayers.Real<(string CrossingId, CriterionCapacity Capacity)>("fails_at", QuantityKind.Years, "Fails at", "Shortest return period asked for whose flow breaks it; empty when none does.", r => r.Capacity.FailsAtYr),
         ]);
 
     /// <summary>What differs from the run before.</summary>
