@@ -47,7 +47,7 @@ public sealed class CatchmentStage
             MeanElevationM = total.MeanElevationM,
             RunoffCoefficient = Coefficient(crossingId, watershed.Outlet, findings),
             CurveNumber = CurveNumber(crossingId, watershed.Outlet, findings),
-            FlowPath = path is null ? [] : [.. path.Profile.Where(p => !double.IsNaN(p.ElevationM)).Select(Point)],
+            FlowPath = path is null ? [] : ListView.WithElevation(path.Profile, Point),
         };
     }
 

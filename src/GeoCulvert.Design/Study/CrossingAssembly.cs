@@ -81,7 +81,7 @@ public static class CrossingAssembly
             FlowPathLengthM = path?.LengthM ?? 0,
             FlowPathSlope1085MPerM = path?.Slope1085MPerM,
             FlowPathEndToEndSlopeMPerM = path?.EndToEndSlopeMPerM,
-            FlowPathProfile = path is null ? [] : [.. path.Profile.Where(p => !double.IsNaN(p.ElevationM)).Select(p => (p.DistanceM, p.ElevationM))],
+            FlowPathProfile = path is null ? [] : ListView.WithElevation(path.Profile, p => (p.DistanceM, p.ElevationM)),
             DownstreamCrossingId = downstreamId,
         };
     }

@@ -1,5 +1,6 @@
 using GeoCulvert.Design.Terrain;
 using NetTopologySuite.Geometries;
+using NetTopologySuite.Geometries.Implementation;
 
 namespace GeoCulvert.Design.Watersheds;
 
@@ -11,19 +12,28 @@ public readonly record struct FlowPathStation(double DistanceM, double Elevation
 
 /// <summary>
 /// The longest flow path of a watershed, from the divide to the outlet, through cell centres, with its profile on the untouched terrain.
+/// Paths that begin at the same cell share their stations: one down a chain of crossings is kept once, however many end on it.
 /// </summary>
 public sealed class FlowPath
 {
-    private FlowPath(LineString line, IReadOnlyList<FlowPathStation> profile) => (Line, Profile) = (line, profile);
+    private static readonly GeometryFactory Factory = new(PackedCoordinateSequenceFactory.DoubleFactory);
+    private readonly GridFrame _frame;
+    private readonly ArraySegment<FlowPathStation> _profile;
+
+    // Area under the profile above elevation 0, from the divide to each station, m2.
+    private readonly double[] _areaM2;
+    private LineString? _line;
+
+    private FlowPath(GridFrame frame, ArraySegment<FlowPathStation> profile, double[] areaM2) => (_frame, _profile, _areaM2) = (frame, profile, areaM2);
 
     /// <summary>The line with z, from the divide down; two equal points when the path is one cell.</summary>
-    public LineString Line { get; }
+    public LineString Line => _line ??= MakeLine();
 
     /// <summary>Distance and elevation at each cell.</summary>
-    public IReadOnlyList<FlowPathStation> Profile { get; }
+    public IReadOnlyList<FlowPathStation> Profile => _profile;
 
     /// <summary>Length between the first and the last cell's centre, m.</summary>
-    public double LengthM => Profile[^1].DistanceM;
+    public double LengthM => _profile[^1].DistanceM;
 
     /// <summary>
     /// Slope between the points 10 % and 85 % of the length above the outlet: (E85 - E10) / (0.75 L), m/m (USGS practice); null for a path of
@@ -43,9 +53,7 @@ public sealed class FlowPath
         get
         {
             if (!(LengthM > 0)) return null;
-            double area = 0, outlet = Profile[^1].ElevationM;
-            for (var i = 1; i < Profile.Count; i++)
-                area += (Profile[i].DistanceM - Profile[i - 1].DistanceM) * (((Profile[i].ElevationM + Profile[i - 1].ElevationM) / 2) - outlet);
+            var area = _areaM2[_profile.Count - 1] - (_profile[^1].ElevationM * LengthM);
             return double.IsNaN(area) ? null : 2 * area / (LengthM * LengthM);
         }
     }
@@ -53,11 +61,17 @@ public sealed class FlowPath
     /// <summary>Elevation at a share of the length above the outlet, m; linear between cells.</summary>
     public double ElevationAboveOutletM(double share)
     {
+        if (_profile.Count == 1) return _profile[0].ElevationM;
         var at = LengthM * (1 - share);
-        var i = 1;
-        while (i < Profile.Count - 1 && Profile[i].DistanceM < at) i++;
-        if (Profile.Count == 1) return Profile[0].ElevationM;
-        FlowPathStation a = Profile[i - 1], b = Profile[i];
+        int low = 1, high = _profile.Count - 1; // the first station at or beyond the place
+        while (low < high)
+        {
+            var middle = (low + high) / 2;
+            if (_profile[middle].DistanceM < at) low = middle + 1;
+            else high = middle;
+        }
+
+        FlowPathStation a = _profile[low - 1], b = _profile[low];
         return a.ElevationM + ((b.ElevationM - a.ElevationM) * Math.Clamp((at - a.DistanceM) / (b.DistanceM - a.DistanceM), 0, 1));
     }
 
@@ -71,17 +85,35 @@ public sealed class FlowPath
         if (cells.Count == 0) throw new ArgumentException("A flow path needs a cell.", nameof(cells));
         var frame = elevation.Frame;
         var profile = new FlowPathStation[cells.Count];
-        var points = new List<Coordinate>(cells.Count + 1);
-        for (var i = 0; i < cells.Count; i++)
+        var area = new double[cells.Count];
+        profile[0] = new(0, elevation.Cells[cells[0]], cells[0]);
+        for (var i = 1; i < profile.Length; i++)
         {
-            var z = elevation.Cells[cells[i]];
-            var p = new CoordinateZ(frame.CentreX(cells[i] % frame.Columns), frame.CentreY(cells[i] / frame.Columns), z);
-            profile[i] = new(i == 0 ? 0 : profile[i - 1].DistanceM + points[^1].Distance(p), z, cells[i]);
-            points.Add(p);
+            int from = cells[i - 1], to = cells[i], width = frame.Columns;
+            double dx = ((to % width) - (from % width)) * frame.CellWidthM, dy = ((to / width) - (from / width)) * frame.CellHeightM;
+            var step = Math.Sqrt((dx * dx) + (dy * dy));
+            profile[i] = new(profile[i - 1].DistanceM + step, elevation.Cells[to], to);
+            area[i] = area[i - 1] + (step * (profile[i].ElevationM + profile[i - 1].ElevationM) / 2);
         }
 
-        if (points.Count == 1) points.Add(points[0].Copy());
-        return new(new LineString([.. points]), profile);
+        return new(frame, profile, area);
+    }
+
+    /// <summary>The path's first cells as a path of their own, on the same stations.</summary>
+    /// <param name="cellCount">Number of cells, at least one.</param>
+    internal FlowPath Upper(int cellCount) => cellCount == _profile.Count ? this : new(_frame, _profile[..cellCount], _areaM2);
+
+    private LineString MakeLine()
+    {
+        var count = Math.Max(2, _profile.Count);
+        var xyz = new double[3 * count];
+        for (var i = 0; i < count; i++)
+        {
+            var station = _profile[Math.Min(i, _profile.Count - 1)];
+            (xyz[3 * i], xyz[(3 * i) + 1], xyz[(3 * i) + 2]) = (_frame.CentreX(station.Cell % _frame.Columns), _frame.CentreY(station.Cell / _frame.Columns), station.ElevationM);
+        }
+
+        return Factory.CreateLineString(new PackedDoubleCoordinateSequence(xyz, 3, 0));
     }
 
     private double? SlopeBetween(double low, double high)

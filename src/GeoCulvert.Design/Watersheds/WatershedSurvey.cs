@@ -91,17 +91,18 @@ public static class WatershedSurvey
         var columns = ZonalSums.Of(labels, tree, cell => cell % frame.Columns);
         var rows = ZonalSums.Of(labels, tree, cell => cell / frame.Columns);
         var filled = isFilled is null ? null : ZonalSums.Of(labels, tree, cell => isFilled(cell) ? 1 : 0);
+        var totalPaths = Paths(tree, totalPath, elevation);
         var watersheds = new Watershed[tree.Count];
         for (var k = 0; k < tree.Count; k++)
         {
-            var local = Characteristics(b => b.Local[k], outlines.Local[k], localPath?.Invoke(k));
-            var total = Characteristics(b => b.Total[k], outlines.Total[k], totalPath?.Invoke(k));
+            var local = Characteristics(b => b.Local[k], outlines.Local[k], localPath?.Invoke(k) is { Count: > 0 } path ? FlowPath.Of(path, elevation) : null);
+            var total = Characteristics(b => b.Total[k], outlines.Total[k], totalPaths[k]);
             watersheds[k] = new(k, tree.Parent(k), local, total, Doubts(total, settings));
         }
 
         return watersheds;
 
-        WatershedCharacteristics Characteristics(Func<ByOutlet<ZoneSum>, ZoneSum> of, WatershedOutline outline, IReadOnlyList<int>? path)
+        WatershedCharacteristics Characteristics(Func<ByOutlet<ZoneSum>, ZoneSum> of, WatershedOutline outline, FlowPath? path)
         {
             var height = of(heights);
             var some = height.ValueCells > 0;
@@ -110,7 +111,7 @@ public static class WatershedSurvey
                 Centroid = height.Cells > 0
                     ? new Coordinate(frame.West + ((of(columns).Sum / height.Cells + 0.5) * frame.CellWidthM), frame.North - ((of(rows).Sum / height.Cells + 0.5) * frame.CellHeightM))
                     : null,
-                LongestFlowPath = path is { Count: > 0 } ? FlowPath.Of(path, elevation) : null,
+                LongestFlowPath = path,
                 MeanElevationM = height.MeanOrNull,
                 LeastElevationM = some ? height.Least : null,
                 LargestElevationM = some ? height.Most : null,
@@ -118,6 +119,21 @@ public static class WatershedSurvey
                 FilledShare = filled is null ? null : of(filled).MeanOrNull,
             };
         }
+    }
+
+    /// <summary>Paths of the total watersheds, outlets downstream first: a path that begins where the next one downstream begins is its upper part.</summary>
+    private static FlowPath?[] Paths(OutletTree tree, Func<int, IReadOnlyList<int>?>? cells, Grid<float> elevation)
+    {
+        var paths = new FlowPath?[tree.Count];
+        foreach (var k in tree.UpstreamFirst.Reverse())
+        {
+            if (cells?.Invoke(k) is not { Count: > 0 } own) continue;
+            var below = tree.Parent(k) < 0 ? null : paths[tree.Parent(k)];
+            var isPart = below is not null && below.Profile.Count >= own.Count && below.Profile[0].Cell == own[0] && below.Profile[own.Count - 1].Cell == own[^1];
+            paths[k] = isPart ? below!.Upper(own.Count) : FlowPath.Of(own, elevation);
+        }
+
+        return paths;
     }
 
     /// <summary>Directions that end at every outlet: what is upstream of an outlet is then its local watershed.</summary>
