@@ -2,14 +2,20 @@ using System.Diagnostics;
 using GeoCulvert.Benchmarks;
 using GeoCulvert.Design.Terrain;
 
+// Usage: GeoCulvert.Benchmarks sizing [CROSSINGS]          sizes random crossings beside a plain scan.
+//        GeoCulvert.Benchmarks survey [SIDE [OUTLETS]]     times the survey of watersheds.
+//        GeoCulvert.Benchmarks [SIDE [TURNS]]              prints nanoseconds a cell (best of the turns) for terrain of SIDE x SIDE cells.
 if (args is ["sizing", ..])
 {
-    // Usage: GeoCulvert.Benchmarks sizing [CROSSINGS]
     SizingBenchmark.Run(args.Length > 1 ? int.Parse(args[1]) : 10000);
     return;
 }
 
-// Usage: GeoCulvert.Benchmarks [SIDE [TURNS]]   prints nanoseconds a cell (best of the turns) for terrain of SIDE x SIDE cells.
+if (args is ["survey", ..])
+{
+    SurveyTimes.Print(args.Length > 1 ? int.Parse(args[1]) : 2000, args.Length > 2 ? int.Parse(args[2]) : 6000);
+    return;
+}
 var side = args.Length > 0 ? int.Parse(args[0]) : 2000;
 var turns = args.Length > 1 ? int.Parse(args[1]) : 3;
 Console.WriteLine($"{side} x {side} cells, one thread, best of {turns}; ns a cell");

@@ -67,27 +67,33 @@ internal sealed class BoundaryArcs
     /// <summary>Walks the arcs from every node; then what is left, which is closed and first met at its north-west corner.</summary>
     private void Scan(bool closed)
     {
+        ReadOnlySpan<int> cells = _labels.Cells, beyond = new int[_columns];
         for (var row = 0; row <= _rows; row++)
         {
+            var upper = row > 0 ? cells.Slice((row - 1) * _columns, _columns) : beyond;
+            var lower = row < _rows ? cells.Slice(row * _columns, _columns) : beyond;
             int aboveLeft = 0, left = 0;
-            for (var column = 0; column <= _columns; column++)
+            for (var column = 0; column < _columns; column++)
             {
-                int above = Label(row - 1, column), here = Label(row, column);
-                if (here != left || here != above || left != aboveLeft)
-                {
-                    if (closed)
-                    {
-                        if (above != here && !Walked(row, column, 0)) Walk(row, column, 0, -1);
-                    }
-                    else if ((here != left ? 1 : 0) + (here != above ? 1 : 0) + (left != aboveLeft ? 1 : 0) + (above != aboveLeft ? 1 : 0) > 2)
-                    {
-                        for (var direction = 0; direction < 4; direction++)
-                            if (IsBoundary(row, column, direction) && !Walked(row, column, direction)) Walk(row, column, direction, NodeAt(row, column));
-                    }
-                }
-
+                int above = upper[column], here = lower[column];
+                if (here != left || here != above || left != aboveLeft) Corner(row, column, aboveLeft, above, left, here, closed);
                 (aboveLeft, left) = (above, here);
             }
+
+            if (left != 0 || aboveLeft != 0) Corner(row, _columns, aboveLeft, 0, left, 0, closed);
+        }
+    }
+
+    private void Corner(int row, int column, int aboveLeft, int above, int left, int here, bool closed)
+    {
+        if (closed)
+        {
+            if (above != here && !Walked(row, column, 0)) Walk(row, column, 0, -1);
+        }
+        else if ((here != left ? 1 : 0) + (here != above ? 1 : 0) + (left != aboveLeft ? 1 : 0) + (above != aboveLeft ? 1 : 0) > 2)
+        {
+            for (var direction = 0; direction < 4; direction++)
+                if (IsBoundary(row, column, direction) && !Walked(row, column, direction)) Walk(row, column, direction, NodeAt(row, column));
         }
     }
 
@@ -158,8 +164,6 @@ internal sealed class BoundaryArcs
     }
 
     private int Cell(int row, int column) => (uint)row < (uint)_rows && (uint)column < (uint)_columns ? (row * _columns) + column : -1;
-
-    private int Label(int row, int column) => LabelOf(Cell(row, column));
 
     private int LabelOf(int cell) => cell < 0 ? 0 : _labels.Cells[cell];
 

@@ -48,7 +48,9 @@ internal sealed class RingStitching
             if (!Arc(way).IsClosed && (_firstOut[StartNode(way)] == way || _secondOut[StartNode(way)] == way)) Follow(way, rings);
 
         List<Ring> shells = [.. rings.Where(r => r.TwiceArea > 0).OrderByDescending(r => r.TwiceArea)], holes = [.. rings.Where(r => r.TwiceArea < 0)];
-        var polygons = shells.Select(s => new Polygon(s.Line, [.. HolesOf(s, shells, holes).Select(h => h.Line)])).ToArray();
+        // A hole lies in the smallest shell around it; shells are ordered, the largest first.
+        var holesOf = holes.ToLookup(h => shells.Count == 1 ? shells[0] : shells.Last(s => s.Contains(h)), h => h.Line);
+        var polygons = shells.Select(s => new Polygon(s.Line, [.. holesOf[s]])).ToArray();
         return polygons.Length == 1 ? polygons[0] : new MultiPolygon(polygons);
     }
 
@@ -90,12 +92,6 @@ internal sealed class RingStitching
     // Left 2, straight 1, right 0: turns of 1, 0 and 3 quarters.
     private static int Leftness(int from, int to) => ((to - from) & 3) switch { 1 => 2, 0 => 1, _ => 0 };
 
-    private static IEnumerable<Ring> HolesOf(Ring shell, List<Ring> shells, List<Ring> holes)
-    {
-        if (shells.Count == 1) return holes;
-        return holes.Where(h => ReferenceEquals(shell, shells.Where(s => s.Contains(h)).MinBy(s => s.TwiceArea)));
-    }
-
     private ref readonly BoundaryArc Arc(int way) => ref _boundary.Arcs[way >> 1];
 
     private int StartNode(int way) => (way & 1) == 0 ? Arc(way).StartNode : Arc(way).EndNode;
@@ -110,23 +106,13 @@ internal sealed class RingStitching
     {
         private readonly int[] _ways;
         private readonly RingStitching _of;
-        private readonly int _west = int.MaxValue;
-        private readonly int _east = int.MinValue;
-        private readonly int _top = int.MaxValue;
-        private readonly int _bottom = int.MinValue;
+        private (int West, int East, int Top, int Bottom)? _extent;
 
         public Ring(int[] ways, RingStitching of)
         {
             (_ways, _of) = (ways, of);
             foreach (var way in ways)
-            {
                 TwiceArea += (way & 1) == 0 ? of.Arc(way).TwiceArea : -of.Arc(way).TwiceArea;
-                foreach (var (column, row) in of._boundary.Points(of.Arc(way)))
-                {
-                    (_west, _east) = (Math.Min(_west, column), Math.Max(_east, column));
-                    (_top, _bottom) = (Math.Min(_top, row), Math.Max(_bottom, row));
-                }
-            }
 
             Line = of._shapes.Ring(ways);
         }
@@ -136,14 +122,16 @@ internal sealed class RingStitching
 
         public LinearRing Line { get; }
 
+        private (int West, int East, int Top, int Bottom) Extent => _extent ??= MakeExtent();
+
         /// <summary>
         /// Whether a hole lies in this shell: tested at the centre of the cell just inside the watershed along the hole's first edge, which is
         /// in one shell only even where rings touch.
         /// </summary>
         public bool Contains(Ring hole)
         {
-            if (hole._west < _west || hole._east > _east || hole._top < _top || hole._bottom > _bottom) return false;
             var (column, row) = hole.InnerCell();
+            if (column < Extent.West || column >= Extent.East || row < Extent.Top || row >= Extent.Bottom) return false;
             var inside = false;
             foreach (var way in _ways)
             {
@@ -157,6 +145,19 @@ internal sealed class RingStitching
             }
 
             return inside;
+        }
+
+        private (int West, int East, int Top, int Bottom) MakeExtent()
+        {
+            var (west, east, top, bottom) = (int.MaxValue, int.MinValue, int.MaxValue, int.MinValue);
+            foreach (var way in _ways)
+                foreach (var (column, row) in _of._boundary.Points(_of.Arc(way)))
+                {
+                    (west, east) = (Math.Min(west, column), Math.Max(east, column));
+                    (top, bottom) = (Math.Min(top, row), Math.Max(bottom, row));
+                }
+
+            return (west, east, top, bottom);
         }
 
         private (int Column, int Row) InnerCell()
