@@ -78,6 +78,34 @@ public class WatershedPolygonTests
         Assert.Equal(0.25, outline.EdgeContactShare);
     }
 
+    [Fact]
+    public void ContactByHand()
+    {
+        // Cells of 4 x 3 m. Label 1 above label 2 in a grid of 4 x 4; x has no terrain:
+        //   1 1 . .      1 touches the northern rim with two sides (8 m), the western with two (6 m)
+        //   1 1 x .      and x with one (3 m): 17 m of 2 (8 + 6) = 28 m.
+        //   2 2 2 .      2 touches the western rim with two sides (6 m), the southern with three (12 m), and x from below with one (4 m): 22 m
+        //   2 2 2 .      of 2 (12 + 6) = 36 m. Where the two meet (8 m) there is terrain.
+        var labels = new Grid<int>(new GridFrame(4, 4, 0, 12, 4, 3), [1, 1, 0, 0, 1, 1, 0, 0, 2, 2, 2, 0, 2, 2, 2, 0]);
+        var outlines = WatershedPolygons.Trace(labels, new OutletTree([1, -1]), cell => cell != 6);
+        Assert.Equal((17.0, 28.0), (outlines.Local[0].EdgeContactM, outlines.Local[0].PerimeterM));
+        Assert.Equal((22.0, 36.0), (outlines.Local[1].EdgeContactM, outlines.Local[1].PerimeterM));
+        // Together: both contacts, and the outlines less the 8 m between them on either side.
+        Assert.Equal((39.0, 48.0), (outlines.Total[1].EdgeContactM, outlines.Total[1].PerimeterM));
+        Assert.Equal(39.0 / 48, outlines.Total[1].EdgeContactShare);
+    }
+
+    [Fact]
+    public void AHoleWithoutTerrainIsContactAndOneWithTerrainIsNot()
+    {
+        // A ring of eight cells around one, away from the rim: outer 12 sides, inner 4.
+        var labels = new Grid<int>(new GridFrame(5, 5, 0, 5, 1, 1), [0, 0, 0, 0, 0, 0, 1, 1, 1, 0, 0, 1, 0, 1, 0, 0, 1, 1, 1, 0, 0, 0, 0, 0, 0]);
+        Assert.Equal(4.0 / 16, WatershedPolygons.Trace(labels, new OutletTree([-1]), cell => cell != 12).Total[0].EdgeContactShare);
+        Assert.Equal(0, WatershedPolygons.Trace(labels, new OutletTree([-1])).Total[0].EdgeContactShare);
+        // Nodata that touches with a corner only (row 0, column 0) has no length in common.
+        Assert.Equal(0, WatershedPolygons.Trace(labels, new OutletTree([-1]), cell => cell != 0).Total[0].EdgeContactShare);
+    }
+
     private static bool Below(int label, int outlet, int[] parent)
     {
         for (var k = label; k >= 0; k = parent[k])
