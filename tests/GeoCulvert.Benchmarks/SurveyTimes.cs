@@ -11,8 +11,8 @@ internal static class SurveyTimes
     public static void Print(int side, int count)
     {
         Console.WriteLine($"{side} x {side} cells, lidar-like, {count} outlets; processor s");
-        Console.WriteLine("| outlets | deepest nest | labels | paths | outlines | one zonal sum | ground slope | whole survey | allocated MB | vertices of totals | arrays of the outlines MB |");
-        Console.WriteLine("|---|---|---|---|---|---|---|---|---|---|---|");
+        Console.WriteLine("| outlets | deepest nest | labels | paths | outlines | one zonal sum | ground slope | cover of 30 m | cover of 0.7 m | whole survey | allocated MB | vertices of totals | arrays of the outlines MB |");
+        Console.WriteLine("|---|---|---|---|---|---|---|---|---|---|---|---|---|");
         var z = Shapes.All[0].Make(side);
         var terrain = Drainage.Solve(z);
         var chance = new Random(1);
@@ -39,12 +39,21 @@ internal static class SurveyTimes
         var held = (GC.GetTotalMemory(true) - before) / 1e6;
         var sums = Seconds(() => ZonalSums.Of(labelling.Labels, tree, terrain.Elevation));
         var slopes = Seconds(() => ZonalSums.Of(labelling.Labels, tree, cell => GroundSlope.At(terrain.Elevation, cell)));
+        double coarse = Cover(30), fine = Cover(0.7);
         Crossing[] crossings = [.. cells.Select((c, k) => new Crossing($"{k}", CrossingOrigin.Given, new Coordinate(0, 0), c, 0))];
         var bytes = GC.GetAllocatedBytesForCurrentThread();
         var survey = Seconds(() => WatershedSurvey.Survey(terrain, crossings));
         bytes = GC.GetAllocatedBytesForCurrentThread() - bytes;
         Console.WriteLine(
-            $"| {name} | {depth.Max()} | {labels:0.00} | {paths:0.00} | {traced:0.00} | {sums:0.00} | {slopes:0.00} | {survey:0.00} | {bytes / 1e6:0} | {outlines!.Total.Sum(o => (long)o.Polygon.NumPoints)} | {held:0} |");
+            $"| {name} | {depth.Max()} | {labels:0.00} | {paths:0.00} | {traced:0.00} | {sums:0.00} | {slopes:0.00} | {coarse:0.00} | {fine:0.00} | {survey:0.00} | {bytes / 1e6:0} | {outlines!.Total.Sum(o => (long)o.Polygon.NumPoints)} | {held:0} |");
+
+        double Cover(double cellM)
+        {
+            var frame = terrain.Elevation.Frame;
+            var cover = new Grid<int>(new GridFrame((int)(frame.Columns / cellM) + 2, (int)(frame.Rows / cellM) + 2, frame.West - (cellM / 3), frame.North + (cellM / 3), cellM, cellM));
+            for (var i = 0; i < cover.Cells.Length; i++) cover.Cells[i] = i / 5 % 16;
+            return Seconds(() => ZonalOverlay.Classes(labelling.Labels, tree, cover));
+        }
     }
 
     private static double Seconds(Action work)
