@@ -149,4 +149,5 @@ def main(data):
                            "\"scipy.sparse.csgraph.connected_components and dijkstra, make_oracles.py\",COMPUTED\n")
 
 
-main(sys.argv[1])
+if __name__ == "__main__":
+    main(sys.argv[1])
