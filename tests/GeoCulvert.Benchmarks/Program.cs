@@ -4,6 +4,7 @@ using GeoCulvert.Design.Terrain;
 
 // Usage: GeoCulvert.Benchmarks sizing [CROSSINGS]          sizes random crossings beside a plain scan.
 //        GeoCulvert.Benchmarks survey [SIDE [OUTLETS]]     times the survey of watersheds.
+//        GeoCulvert.Benchmarks conditioning [SIDE [TURNS]] times cuts, depressions and mapped streams.
 //        GeoCulvert.Benchmarks [SIDE [TURNS]]              prints nanoseconds a cell (best of the turns) for terrain of SIDE x SIDE cells.
 if (args is ["sizing", ..])
 {
@@ -16,8 +17,17 @@ if (args is ["survey", ..])
     SurveyTimes.Print(args.Length > 1 ? int.Parse(args[1]) : 2000, args.Length > 2 ? int.Parse(args[2]) : 6000);
     return;
 }
+
+var conditioning = args is ["conditioning", ..];
+if (conditioning) args = args[1..];
 var side = args.Length > 0 ? int.Parse(args[0]) : 2000;
 var turns = args.Length > 1 ? int.Parse(args[1]) : 3;
+if (conditioning)
+{
+    Conditioning.Print(side, turns);
+    return;
+}
+
 Console.WriteLine($"{side} x {side} cells, one thread, best of {turns}; ns a cell");
 Console.WriteLine("Ratio: processor time of the whole stage and the labels over that of `gdaldem slope` on the same cells in a bare / a compressed file.");
 Console.WriteLine("| terrain | raised % | fill | directions | accumulation | whole stage | labels 1000 | paths 1000 | streams | allocated B a cell | whole + labels, CPU | gdaldem slope, CPU | ratio |");

@@ -29,7 +29,7 @@ public class WatershedsOfRealTerrainTests
             var survey = WatershedSurvey.Survey(terrain, crossings, new() { SmoothOutlines = smooth });
             foreach (var watershed in survey.Watersheds)
             {
-                Assert.Equal(terrain.Accumulation.Cells[crossings[watershed.Outlet].WatershedCell], watershed.Total.Cells);
+                Assert.Equal(terrain.Accumulation.Cells[crossings[watershed.Outlet].OutletCell], watershed.Total.Cells);
                 Assert.True(watershed.Total.Outline.Polygon.IsValid);
                 Assert.True(watershed.Local.Outline.Polygon.IsValid);
                 var parts = survey.Watersheds.Where(w => survey.Tree.Drains(watershed.Outlet, w.Outlet)).ToList();
