@@ -36,6 +36,9 @@ public sealed record WatershedCharacteristics(double AreaM2, long Cells, Watersh
     /// <summary>Share of the cells that conditioning raised, 0-1: closed depressions, real or not; null when not known.</summary>
     public double? FilledShare { get; init; }
 
+    /// <summary>Cells with a diagonal neighbour in the grid that has no terrain. Corners have no length: where sides have no contact, this is the only sign of it.</summary>
+    public long CornerContactCount { get; init; }
+
     /// <summary>Share of the perimeter beyond which there is no terrain, 0-1.</summary>
     public double EdgeContactShare => Outline.EdgeContactShare;
 }

@@ -11,6 +11,12 @@ public static class WatershedFindings
         "The watershed touches the edge of the terrain model or a part of it without values, so its area is a lower bound.",
         "Extend the terrain model beyond the divide, or confirm that no land beyond it drains here.");
 
+    /// <summary>The watershed touches nodata, but at corners of cells only.</summary>
+    public static readonly FindingCode CornerContact = new(
+        "watershed-corner-contact", Severity.Warning,
+        "The watershed touches a part of the terrain model without values, though only at corners of cells; water may enter there diagonally.",
+        "Look at the place on the map; fill the gap in the terrain model, or confirm that no land there drains here.");
+
     /// <summary>Only a few cells.</summary>
     public static readonly FindingCode Tiny = new(
         "watershed-tiny", Severity.Warning,

@@ -91,6 +91,7 @@ public static class WatershedSurvey
         var columns = ZonalSums.Of(labels, tree, cell => cell % frame.Columns);
         var rows = ZonalSums.Of(labels, tree, cell => cell / frame.Columns);
         var filled = isFilled is null ? null : ZonalSums.Of(labels, tree, cell => isFilled(cell) ? 1 : 0);
+        var corners = ZonalSums.Of(labels, tree, cell => HasCornerWithoutTerrain(elevation, cell) ? 1 : 0);
         var totalPaths = Paths(tree, totalPath, elevation);
         var watersheds = new Watershed[tree.Count];
         for (var k = 0; k < tree.Count; k++)
@@ -117,6 +118,7 @@ public static class WatershedSurvey
                 LargestElevationM = some ? height.Most : null,
                 MeanBasinSlopeMPerM = of(slopes).MeanOrNull,
                 FilledShare = filled is null ? null : of(filled).MeanOrNull,
+                CornerContactCount = (long)of(corners).Sum,
             };
         }
     }
@@ -136,6 +138,15 @@ public static class WatershedSurvey
         return paths;
     }
 
+    private static bool HasCornerWithoutTerrain(Grid<float> elevation, int cell)
+    {
+        var frame = elevation.Frame;
+        int row = cell / frame.Columns, column = cell % frame.Columns;
+        return Lacks(row - 1, column - 1) || Lacks(row - 1, column + 1) || Lacks(row + 1, column - 1) || Lacks(row + 1, column + 1);
+
+        bool Lacks(int r, int c) => frame.Contains(r, c) && float.IsNaN(elevation[r, c]);
+    }
+
     /// <summary>Directions that end at every outlet: what is upstream of an outlet is then its local watershed.</summary>
     private static Grid<byte> Cut(Grid<byte> direction, int[] outletCells)
     {
@@ -152,6 +163,8 @@ public static class WatershedSurvey
         if (total.Outline.EdgeContactM > 0 && total.EdgeContactShare > settings.EdgeContactLimitShare)
             doubts.Add(WatershedFindings.EdgeContact.With(
                 $"{total.EdgeContactShare * 100:0.#} % of the boundary ({total.Outline.EdgeContactM:0} m) has no terrain beyond it", total.EdgeContactShare, settings.EdgeContactLimitShare));
+        else if (total.Outline.EdgeContactM == 0 && total.CornerContactCount > 0)
+            doubts.Add(WatershedFindings.CornerContact.With($"{total.CornerContactCount} cells", total.CornerContactCount, 0));
         if (total.Cells < settings.FewCells) doubts.Add(WatershedFindings.Tiny.With($"{total.Cells} cells", total.Cells, settings.FewCells));
         if (total.FilledShare > settings.StorageLimitShare)
             doubts.Add(WatershedFindings.Storage.With($"{total.FilledShare.Value * 100:0.#} % of the cells lie in filled depressions", total.FilledShare, settings.StorageLimitShare));

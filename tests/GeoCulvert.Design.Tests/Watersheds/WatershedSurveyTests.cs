@@ -61,6 +61,26 @@ public class WatershedSurveyTests
     }
 
     [Fact]
+    public void NodataAtACornerIsSaidOnlyWhereNoSideTouches()
+    {
+        // A block of 2 x 2 in rows and columns 2-3; nodata in the cell north-west of it, then beside it too.
+        var labels = new Grid<int>(Frame);
+        foreach (var cell in new[] { 14, 15, 20, 21 }) labels.Cells[cell] = 1;
+        var elevation = new Grid<float>(Frame);
+        elevation[1, 1] = float.NaN;
+        var corner = WatershedSurvey.Survey(labels, [-1], elevation)[0];
+        Assert.Equal((1L, 0.0), (corner.Total.CornerContactCount, corner.Total.EdgeContactShare));
+        Assert.Contains(corner.Findings, f => f.Code == "watershed-corner-contact" && f.Value == 1);
+        Assert.DoesNotContain(corner.Findings, f => f.Code == "watershed-edge-contact");
+        elevation[1, 2] = float.NaN;
+        var side = WatershedSurvey.Survey(labels, [-1], elevation)[0];
+        Assert.Equal(1.0 / 8, side.Total.EdgeContactShare);
+        Assert.DoesNotContain(side.Findings, f => f.Code == "watershed-corner-contact");
+        elevation[1, 1] = elevation[1, 2] = 0;
+        Assert.Equal(["watershed-tiny"], WatershedSurvey.Survey(labels, [-1], elevation)[0].Findings.Select(f => f.Code));
+    }
+
+    [Fact]
     public void CrossingsOnOneCellHaveOneWatershed()
     {
         // A plane falling south at 10 %: the cell in row 3, column 2 drains rows 0-3 of its column; two crossings lie on it and one upstream.
