@@ -102,10 +102,12 @@ public sealed unsafe class Crs : SafeHandle
         throw new GdalException($"'{text}' is not a coordinate system", Gdal.Says());
     }
 
-    /// <summary>The UTM zone (WGS 84) of a place.</summary>
+    /// <summary>The UTM zone (WGS 84) of a place; beyond 84 degrees north and 80 south, where UTM ends, the polar system of its sister UPS.</summary>
     public static Crs UtmFor(double longitudeDeg, double latitudeDeg)
     {
-        var zone = Math.Clamp((int)Math.Floor((longitudeDeg + 180) / 6) + 1, 1, 60);
+        if (latitudeDeg is > 84 or < -80) return Parse(latitudeDeg > 0 ? "EPSG:5041" : "EPSG:5042");
+        var east = longitudeDeg + 180 - (360 * Math.Floor((longitudeDeg + 180) / 360));
+        var zone = Math.Clamp((int)Math.Floor(east / 6) + 1, 1, 60);
         return Parse(string.Create(CultureInfo.InvariantCulture, $"EPSG:{(latitudeDeg >= 0 ? 32600 : 32700) + zone}"));
     }
 
@@ -114,6 +116,41 @@ public sealed unsafe class Crs : SafeHandle
     {
         ArgumentNullException.ThrowIfNull(other);
         return Native.OSRIsSame(Pointer, other.Pointer) != 0;
+    }
+
+    /// <summary>
+    /// Places of this plane on its own ellipsoid, in space: x to longitude 0 on the equator, z to the north pole, m. Null when a place has none.
+    /// </summary>
+    /// <param name="xM">x of the places, m.</param>
+    /// <param name="yM">y of the places, m.</param>
+    internal (double X, double Y, double Z)[]? OnEllipsoid(double[] xM, double[] yM)
+    {
+        using var degrees = new Crs(Gdal.Check(Native.OSRCloneGeogCS(Pointer), $"The ellipsoid of {Label}"));
+        using var transform = new CrsTransform(this, degrees);
+        double[] longitude = [.. xM.Select(v => v / LinearUnitM)], latitude = [.. yM.Select(v => v / LinearUnitM)];
+        try
+        {
+            transform.Apply(longitude, latitude);
+        }
+        catch (GdalException)
+        {
+            return null;
+        }
+
+        int wrong;
+        double a = Native.OSRGetSemiMajor(Pointer, &wrong), inverse = Native.OSRGetInvFlattening(Pointer, &wrong), flattening = inverse == 0 ? 0 : 1 / inverse;
+        var e2 = flattening * (2 - flattening);
+        var unit = Native.OSRGetAngularUnits(degrees.Pointer, null);
+        var inSpace = new (double X, double Y, double Z)[xM.Length];
+        for (var i = 0; i < inSpace.Length; i++)
+        {
+            double l = longitude[i] * unit, p = latitude[i] * unit;
+            if (!double.IsFinite(l) || !double.IsFinite(p)) return null;
+            var n = a / Math.Sqrt(1 - (e2 * Math.Sin(p) * Math.Sin(p))); // radius of curvature in the prime vertical
+            inSpace[i] = (n * Math.Cos(p) * Math.Cos(l), n * Math.Cos(p) * Math.Sin(l), n * (1 - e2) * Math.Sin(p));
+        }
+
+        return inSpace;
     }
 
     internal static Crs? FromBorrowed(nint srs) => srs == 0 ? null : new Crs(Native.OSRClone(srs));

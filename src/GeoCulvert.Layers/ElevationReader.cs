@@ -42,7 +42,11 @@ public sealed record WorkingPlane(Crs Crs)
 /// <param name="Elevation">Elevations in m on a north-up grid in m; NaN is nodata.</param>
 /// <param name="Plane">Where the grid lies.</param>
 /// <param name="Findings">What was done to it.</param>
-public sealed record ElevationModel(Grid<float> Elevation, WorkingPlane Plane, IReadOnlyList<Finding> Findings);
+public sealed record ElevationModel(Grid<float> Elevation, WorkingPlane Plane, IReadOnlyList<Finding> Findings)
+{
+    /// <summary>How true to size the plane is over the grid; none where it is within 0.02 %.</summary>
+    public PlaneScale Scale { get; init; } = PlaneScale.None;
+}
 
 /// <summary>Reads terrain models and class rasters onto one grid.</summary>
 public static class ElevationReader
@@ -72,12 +76,13 @@ public static class ElevationReader
         var findings = new List<Finding>();
         var (crs, verticalM) = Check(source, options, findings);
         using var from = crs.Horizontal();
-        var working = (options.WorkingCrs ?? (crs.IsProjected ? crs : Utm(source, from))).Horizontal(); // a copy: the source closes its own
+        var working = PlaneChoice.Of(source, options.WorkingCrs, from, findings);
         var grid = from.IsProjected && from.IsSameAs(working) && source.GeoTransform is [_, > 0, 0, _, 0, not 0] && options.CellSizeM is null
             ? ReadAsItLies(source, options, working)
             : ReadWarped(source, options, from, working, findings);
         InMetres(grid, (float)verticalM, source.Path, findings);
-        return new ElevationModel(grid, new WorkingPlane(working), findings);
+        var scale = PlaneChoice.Judge(grid.Frame, working, source.Path, options.WorkingCrs is not null, findings);
+        return new ElevationModel(grid, new WorkingPlane(working), findings) { Scale = scale };
     }
 
     /// <summary>Checks what the file and the project say, without reading a cell.</summary>
@@ -147,16 +152,6 @@ public static class ElevationReader
 
         if (doubtful > 0)
             findings.Add(LayerFindings.ElevationsDoubtful.With(string.Create(CultureInfo.InvariantCulture, $"{path}: {doubtful} of {grid.Frame.Count} cells, for example {first:0.###}")));
-    }
-
-    private static Crs Utm(RasterSource source, Crs crs)
-    {
-        var g = source.GeoTransform;
-        double[] x = [g[0] + (g[1] * source.Columns / 2) + (g[2] * source.Rows / 2)], y = [g[3] + (g[4] * source.Columns / 2) + (g[5] * source.Rows / 2)];
-        using var wgs84 = Crs.Parse("EPSG:4326");
-        using var transform = new CrsTransform(crs, wgs84);
-        transform.Apply(x, y);
-        return Crs.UtmFor(x[0], y[0]);
     }
 
     private static Grid<float> ReadAsItLies(RasterSource source, ElevationOptions options, Crs crs)

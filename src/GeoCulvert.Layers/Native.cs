@@ -59,6 +59,11 @@ internal static unsafe partial class Native
     [LibraryImport(L)] public static partial int OSRIsProjected(nint srs);
     [LibraryImport(L)] public static partial double OSRGetLinearUnits(nint srs, nint* name);
     [LibraryImport(L, StringMarshalling = U)] public static partial double OSRGetTargetLinearUnits(nint srs, string key, nint* name);
+    [LibraryImport(L, StringMarshalling = U)] public static partial nint OSRGetAttrValue(nint srs, string node, int child);
+    [LibraryImport(L)] public static partial nint OSRCloneGeogCS(nint srs);
+    [LibraryImport(L)] public static partial double OSRGetSemiMajor(nint srs, int* error);
+    [LibraryImport(L)] public static partial double OSRGetInvFlattening(nint srs, int* error);
+    [LibraryImport(L)] public static partial double OSRGetAngularUnits(nint srs, nint* name);
     [LibraryImport(L)] public static partial int OSRIsCompound(nint srs);
     [LibraryImport(L)] public static partial int OSRStripVertical(nint srs);
     [LibraryImport(L)] public static partial int OSRGetAxesCount(nint srs);

@@ -14,7 +14,7 @@ public class DamageTests
     [Fact]
     public void ARasterThatClaimsMoreCellsThanFitIsRefused()
     {
-        var path = Files.Raster(_folder, "a", "1 2\n3 4", "EPSG:26912");
+        var path = Files.Raster(_folder, "a", "1 2\n3 4", "EPSG:26912", 0.01); // 20 km wide, so that its plane can be judged
         File.WriteAllText(path, File.ReadAllText(path).Replace("rasterXSize=\"2\" rasterYSize=\"2\"", "rasterXSize=\"2000000\" rasterYSize=\"2000000\"", StringComparison.Ordinal));
         using var source = RasterSource.Open(path);
         Assert.Contains("2000000 rows", Assert.Throws<InputException>(() => ElevationReader.Read(source, new ElevationOptions(VerticalUnitM: 1))).Message, StringComparison.Ordinal);

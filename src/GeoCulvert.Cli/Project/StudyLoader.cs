@@ -95,6 +95,7 @@ internal sealed partial class StudyLoader
         var inputs = new StudyInputs
         {
             Elevation = elevation!.Elevation,
+            PlaneScale = elevation.Scale,
             Roads = roads,
             Points = points,
             KnownCulverts = culverts ?? [],

@@ -35,7 +35,7 @@ public sealed record WatershedResult
     /// <summary>All that is known of the local watershed.</summary>
     public required LandFigures Local { get; init; }
 
-    /// <summary>Total area, cells times cell area, m2.</summary>
+    /// <summary>Total area, the true area of its cells, m2.</summary>
     public required double AreaM2 { get; init; }
 
     /// <summary>Local area, m2.</summary>

@@ -32,7 +32,7 @@ public static class DrainageStudy
         var openings = CrossingStage.Results(opened, found.Crossings);
 
         // The land above every crossing, all in one pass.
-        var watersheds = stages.Run("watersheds", frame.Count, _ => WatershedSurvey.Survey(terrain, found.Crossings, new() { SmoothOutlines = settings.SmoothOutlines }));
+        var watersheds = stages.Run("watersheds", frame.Count, _ => WatershedSurvey.Survey(terrain, found.Crossings, new() { SmoothOutlines = settings.SmoothOutlines }, inputs.PlaneScale));
         cancel.ThrowIfCancellationRequested();
 
         // From land to flow, from flow to culvert.
@@ -40,7 +40,7 @@ public static class DrainageStudy
 
         var streams = StreamNetwork.Extract(terrain.Direction, terrain.Accumulation, streamCells)
             .Where(s => s.Cells.Length > 1)
-            .Select(s => new StreamResult(new LineString([.. s.Cells.Select(c => Centre(frame, c))]), s.LowerAccumulationCells * frame.CellAreaM2, s.Order));
+            .Select(s => new StreamResult(new LineString([.. s.Cells.Select(c => Centre(frame, c))]), s.LowerAccumulationCells * frame.CellAreaM2 * ScaleAt(s.Cells[^1]), s.Order));
         var roads = inputs.Roads.Select(r => new RoadResult(r.Alignment.Name, r.Class.Name, r.Alignment.Line, r.Alignment.WidthM, r.Alignment.Surface));
         var whole = terrain.Findings.Concat(found.Findings).Concat(RunFindings(inputs, found.Crossings));
         return new StudyResult(terrain, crossings, [.. streams], [.. roads], [.. whole.Concat(crossings.SelectMany(c => c.Findings))])
@@ -49,6 +49,9 @@ public static class DrainageStudy
             Untouched = CrossingStage.Untouched(opened, openings),
             Changes = CrossingIdentity.Changes(inputs.Former, crossings),
         };
+
+        // A reach's drainage area is not summed cell by cell: the scale at its lower end stands for all of it.
+        double ScaleAt(int cell) => inputs.PlaneScale.AreaRatioAt(frame.CentreX(cell % frame.Columns), frame.CentreY(cell / frame.Columns));
     }
 
     private static List<CrossingResult> Compute(

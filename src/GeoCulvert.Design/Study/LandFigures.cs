@@ -50,7 +50,7 @@ public static class LandLayers
 
     internal static IReadOnlyList<LayerColumn<CrossingResult>> Columns(Func<CrossingResult, LandFigures> land) =>
     [
-        ResultLayers.Real<CrossingResult>("perimeter", QuantityKind.Length, "Perimeter", "Length of the outline along cell edges, holes included; longer than a smooth divide.", c => land(c).Ground.Outline.PerimeterM),
+        ResultLayers.Real<CrossingResult>("perimeter", QuantityKind.Length, "Perimeter", "True length of the outline along cell edges, holes included; longer than a smooth divide.", c => land(c).Ground.Outline.PerimeterM),
         ResultLayers.Real<CrossingResult>("centroid_x", QuantityKind.None, "Centroid x", "Mean of the cells' centres, in the coordinate system of the layer.", c => land(c).Ground.Centroid?.X),
         ResultLayers.Real<CrossingResult>("centroid_y", QuantityKind.None, "Centroid y", "Mean of the cells' centres, in the coordinate system of the layer.", c => land(c).Ground.Centroid?.Y),
         ResultLayers.Real<CrossingResult>("edge_contact_share", QuantityKind.Share, "Edge contact", "Share of the boundary on the edge of the terrain or on nodata.", c => land(c).Ground.EdgeContactShare),

@@ -30,7 +30,7 @@ public static class ResultLayers
             Text<CrossingResult>("also_under", "Also under", "Other roads over the same culvert.", c => c.AlsoUnder),
             Text<CrossingResult>("found_by", "Found by", "stream, given point, opened embankment, low point of the road or ditch relief.", c => c.FoundBy),
             Text<CrossingResult>("status", "Status", "sized, rated, no size fits or not computed.", c => c.Status),
-            Real<CrossingResult>("watershed_area", QuantityKind.Area, "Drainage area", "Area of the total watershed, cells times cell area.", c => c.Watershed.AreaM2),
+            Real<CrossingResult>("watershed_area", QuantityKind.Area, "Drainage area", "True area of the total watershed: its cells, each with its area on the ellipsoid.", c => c.Watershed.AreaM2),
             Real<CrossingResult>("edge_contact_share", QuantityKind.Share, "Edge contact", "Share of the watershed's boundary on the edge of the terrain or on nodata; the area is understated when it is not 0.", c => c.Watershed.EdgeContactShare),
             Real<CrossingResult>("time_of_concentration", QuantityKind.Time, "Time of concentration", "The chosen time of concentration.", c => c.Flow?.Time?.TimeMin * 60),
             Real<CrossingResult>("design_return_period", QuantityKind.Years, "Design flood", "Return period of the design flood.", c => c.DesignReturnPeriodYr),
@@ -68,7 +68,7 @@ public static class ResultLayers
         "watersheds", "Watersheds", "All the land that drains to a crossing, through other crossings too.", LayerGeometry.Polygon, c => c.Watershed.Outline,
         [
             Id<CrossingResult>(c => c.CrossingId),
-            Real<CrossingResult>("area", QuantityKind.Area, "Area", "Cells times cell area, not the area of the drawn outline where that is smoothed.", c => c.Watershed.AreaM2),
+            Real<CrossingResult>("area", QuantityKind.Area, "Area", "True area: the cells, each with its area on the ellipsoid; not the area of the drawn outline in the plane.", c => c.Watershed.AreaM2),
             Real<CrossingResult>("local_area", QuantityKind.Area, "Local area", "The part that reaches the crossing without passing another.", c => c.Watershed.LocalAreaM2),
             Text<CrossingResult>("downstream_crossing_id", "Next downstream", "Crossing that this one drains to, if any.", c => c.Watershed.DownstreamCrossingId),
             .. LandLayers.Columns(c => c.Watershed.Total),
@@ -80,7 +80,7 @@ public static class ResultLayers
         "local_watersheds", "Local watersheds", "The land that reaches a crossing without passing another crossing; they tile the total watersheds.", LayerGeometry.Polygon, c => c.Watershed.LocalOutline,
         [
             Id<CrossingResult>(c => c.CrossingId),
-            Real<CrossingResult>("area", QuantityKind.Area, "Area", "Cells times cell area, not the area of the drawn outline where that is smoothed.", c => c.Watershed.LocalAreaM2),
+            Real<CrossingResult>("area", QuantityKind.Area, "Area", "True area: the cells, each with its area on the ellipsoid; not the area of the drawn outline in the plane.", c => c.Watershed.LocalAreaM2),
             Text<CrossingResult>("downstream_crossing_id", "Next downstream", "Crossing that this one drains to, if any.", c => c.Watershed.DownstreamCrossingId),
             .. LandLayers.Columns(c => c.Watershed.Local),
             Real<CrossingResult>("runoff_coefficient", QuantityKind.None, "C", "Runoff coefficient of the local land cover at the design flood; empty without a land cover.", c => c.Watershed.Local.Cover?.RunoffCoefficient is { } v ? (c.DesignReturnPeriodYr >= 25 ? v.From25Yr : v.Below25Yr) : null),

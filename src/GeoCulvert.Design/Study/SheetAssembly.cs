@@ -51,7 +51,7 @@ internal static class SheetAssembly
 
     private static SheetGroup Watershed(WatershedResult w) => new("Watershed",
     [
-        Fact("Drainage area", w.AreaM2, QuantityKind.Area, "cells times cell area"),
+        Fact("Drainage area", w.AreaM2, QuantityKind.Area, "true area of its cells"),
         Fact("Of which local", w.LocalAreaM2, QuantityKind.Area, "not through another crossing"),
         Fact("Perimeter", w.PerimeterM, QuantityKind.Length, "along cell edges"),
         Fact("Edge contact", w.EdgeContactShare, QuantityKind.Share, "share of the boundary without terrain beyond it"),

@@ -19,6 +19,9 @@ public sealed record StudyInputs
     /// <summary>Terrain, m; NaN is nodata.</summary>
     public required Grid<float> Elevation { get; init; }
 
+    /// <summary>How true to size the terrain's plane is; areas of watersheds, perimeters and flow paths are corrected by it.</summary>
+    public PlaneScale PlaneScale { get; init; } = PlaneScale.None;
+
     /// <summary>Roads; may be empty when points are given.</summary>
     public required IReadOnlyList<StudyRoad> Roads { get; init; }
 

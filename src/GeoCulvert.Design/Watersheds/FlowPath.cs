@@ -78,12 +78,14 @@ public sealed class FlowPath
     /// <summary>Makes the path of cells from the divide to the outlet.</summary>
     /// <param name="cells">Row-major indices, divide first; at least one.</param>
     /// <param name="elevation">The untouched terrain.</param>
-    public static FlowPath Of(IReadOnlyList<int> cells, Grid<float> elevation)
+    /// <param name="scale">Scale of the plane, for true distances; null for those of the plane.</param>
+    public static FlowPath Of(IReadOnlyList<int> cells, Grid<float> elevation, PlaneScale? scale = null)
     {
         ArgumentNullException.ThrowIfNull(cells);
         ArgumentNullException.ThrowIfNull(elevation);
         if (cells.Count == 0) throw new ArgumentException("A flow path needs a cell.", nameof(cells));
         var frame = elevation.Frame;
+        scale ??= PlaneScale.None;
         var profile = new FlowPathStation[cells.Count];
         var area = new double[cells.Count];
         profile[0] = new(0, elevation.Cells[cells[0]], cells[0]);
@@ -91,7 +93,9 @@ public sealed class FlowPath
         {
             int from = cells[i - 1], to = cells[i], width = frame.Columns;
             double dx = ((to % width) - (from % width)) * frame.CellWidthM, dy = ((to / width) - (from / width)) * frame.CellHeightM;
-            var step = Math.Sqrt((dx * dx) + (dy * dy));
+            var step = scale.IsNone
+                ? Math.Sqrt((dx * dx) + (dy * dy))
+                : scale.LengthM((frame.CentreX(from % width) + frame.CentreX(to % width)) / 2, (frame.CentreY(from / width) + frame.CentreY(to / width)) / 2, dx, -dy);
             profile[i] = new(profile[i - 1].DistanceM + step, elevation.Cells[to], to);
             area[i] = area[i - 1] + (step * (profile[i].ElevationM + profile[i - 1].ElevationM) / 2);
         }

@@ -4,9 +4,9 @@ using NetTopologySuite.Geometries;
 namespace GeoCulvert.Design.Watersheds;
 
 /// <summary>What is known of the land above a crossing, or of its local part. No smoothing: figures are those of the cells.</summary>
-/// <param name="AreaM2">Cells times the area of a cell, m2.</param>
+/// <param name="AreaM2">Sum over the cells of their true areas, m2: cells times the area of a cell where the plane is taken as true.</param>
 /// <param name="Cells">Number of cells.</param>
-/// <param name="Outline">Polygon, perimeter and edge contact.</param>
+/// <param name="Outline">Polygon in the plane; perimeter and edge contact, true lengths.</param>
 public sealed record WatershedCharacteristics(double AreaM2, long Cells, WatershedOutline Outline)
 {
     /// <summary>Mean of the cells' centres; null without cells. May lie outside a bent watershed.</summary>

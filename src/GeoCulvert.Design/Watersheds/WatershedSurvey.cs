@@ -38,7 +38,8 @@ public static class WatershedSurvey
     /// <param name="terrain">The terrain, drained.</param>
     /// <param name="crossings">Crossings on it.</param>
     /// <param name="settings">Settings; null for the defaults.</param>
-    public static CrossingWatersheds Survey(DrainedTerrain terrain, IReadOnlyList<Crossing> crossings, WatershedSettings? settings = null)
+    /// <param name="scale">Scale of the plane, for true areas and lengths; null for those of the plane.</param>
+    public static CrossingWatersheds Survey(DrainedTerrain terrain, IReadOnlyList<Crossing> crossings, WatershedSettings? settings = null, PlaneScale? scale = null)
     {
         ArgumentNullException.ThrowIfNull(terrain);
         ArgumentNullException.ThrowIfNull(crossings);
@@ -55,8 +56,8 @@ public static class WatershedSurvey
         float[] filled = terrain.Filled.Surface.Cells, ground = terrain.Elevation.Cells;
         int[] Longest(IReadOnlyList<int[]> of, int k) => crossings.Count == cells.Length || first[k] != k
             ? of[k]
-            : Enumerable.Range(0, cells.Length).Where(a => first[a] == k).Select(a => of[a]).MaxBy(p => FlowPath.Of(p, terrain.Elevation).LengthM)!;
-        var byOutlet = Survey(labelling.Labels, parent, terrain.Elevation, k => Longest(paths, k), k => Longest(localPaths, k), cell => filled[cell] > ground[cell], settings);
+            : Enumerable.Range(0, cells.Length).Where(a => first[a] == k).Select(a => of[a]).MaxBy(p => FlowPath.Of(p, terrain.Elevation, scale).LengthM)!;
+        var byOutlet = Survey(labelling.Labels, parent, terrain.Elevation, k => Longest(paths, k), k => Longest(localPaths, k), cell => filled[cell] > ground[cell], settings, scale);
         return new(
             labelling.Labels,
             new OutletTree(parent),
@@ -71,6 +72,7 @@ public static class WatershedSurvey
     /// <param name="localPath">The same within the local watershed; null to leave it out.</param>
     /// <param name="isFilled">Whether conditioning raised a cell (row-major index); null when not known.</param>
     /// <param name="settings">Settings; null for the defaults.</param>
+    /// <param name="scale">Scale of the plane, for true areas and lengths; null for those of the plane.</param>
     public static IReadOnlyList<Watershed> Survey(
         Grid<int> labels,
         IReadOnlyList<int> parent,
@@ -78,11 +80,13 @@ public static class WatershedSurvey
         Func<int, IReadOnlyList<int>?>? totalPath = null,
         Func<int, IReadOnlyList<int>?>? localPath = null,
         Func<int, bool>? isFilled = null,
-        WatershedSettings? settings = null)
+        WatershedSettings? settings = null,
+        PlaneScale? scale = null)
     {
         ArgumentNullException.ThrowIfNull(labels);
         ArgumentNullException.ThrowIfNull(elevation);
         settings ??= new();
+        scale ??= PlaneScale.None;
         var tree = new OutletTree(parent);
         var frame = labels.Frame;
         var outlines = WatershedPolygons.Trace(labels, tree, cell => !float.IsNaN(elevation.Cells[cell]), settings.SmoothOutlines);
@@ -92,11 +96,12 @@ public static class WatershedSurvey
         var rows = ZonalSums.Of(labels, tree, cell => cell / frame.Columns);
         var filled = isFilled is null ? null : ZonalSums.Of(labels, tree, cell => isFilled(cell) ? 1 : 0);
         var corners = ZonalSums.Of(labels, tree, cell => HasCornerWithoutTerrain(elevation, cell) ? 1 : 0);
-        var totalPaths = Paths(tree, totalPath, elevation);
+        var totalPaths = Paths(tree, totalPath, elevation, scale);
+        var areas = scale.IsNone ? null : ZonalSums.Of(labels, tree, cell => scale.AreaRatioAt(frame.CentreX(cell % frame.Columns), frame.CentreY(cell / frame.Columns)));
         var watersheds = new Watershed[tree.Count];
         for (var k = 0; k < tree.Count; k++)
         {
-            var local = Characteristics(b => b.Local[k], outlines.Local[k], localPath?.Invoke(k) is { Count: > 0 } path ? FlowPath.Of(path, elevation) : null);
+            var local = Characteristics(b => b.Local[k], outlines.Local[k], localPath?.Invoke(k) is { Count: > 0 } path ? FlowPath.Of(path, elevation, scale) : null);
             var total = Characteristics(b => b.Total[k], outlines.Total[k], totalPaths[k]);
             watersheds[k] = new(k, tree.Parent(k), local, total, Doubts(total, settings));
         }
@@ -107,7 +112,9 @@ public static class WatershedSurvey
         {
             var height = of(heights);
             var some = height.ValueCells > 0;
-            return new(height.Cells * frame.CellAreaM2, height.Cells, outline)
+            // Cells of equal size where the plane is taken as true; otherwise each by its own share.
+            var cells = areas is null ? height.Cells : of(areas).Sum;
+            return new(cells * frame.CellAreaM2, height.Cells, TrueLengths.Of(outline, scale))
             {
                 Centroid = height.Cells > 0
                     ? new Coordinate(frame.West + ((of(columns).Sum / height.Cells + 0.5) * frame.CellWidthM), frame.North - ((of(rows).Sum / height.Cells + 0.5) * frame.CellHeightM))
@@ -116,7 +123,7 @@ public static class WatershedSurvey
                 MeanElevationM = height.MeanOrNull,
                 LeastElevationM = some ? height.Least : null,
                 LargestElevationM = some ? height.Most : null,
-                MeanBasinSlopeMPerM = of(slopes).MeanOrNull,
+                MeanBasinSlopeMPerM = of(slopes).MeanOrNull / Math.Sqrt(height.Cells > 0 ? cells / height.Cells : 1),
                 FilledShare = filled is null ? null : of(filled).MeanOrNull,
                 CornerContactCount = (long)of(corners).Sum,
             };
@@ -124,7 +131,7 @@ public static class WatershedSurvey
     }
 
     /// <summary>Paths of the total watersheds, outlets downstream first: a path that begins where the next one downstream begins is its upper part.</summary>
-    private static FlowPath?[] Paths(OutletTree tree, Func<int, IReadOnlyList<int>?>? cells, Grid<float> elevation)
+    private static FlowPath?[] Paths(OutletTree tree, Func<int, IReadOnlyList<int>?>? cells, Grid<float> elevation, PlaneScale scale)
     {
         var paths = new FlowPath?[tree.Count];
         foreach (var k in tree.UpstreamFirst.Reverse())
@@ -132,7 +139,7 @@ public static class WatershedSurvey
             if (cells?.Invoke(k) is not { Count: > 0 } own) continue;
             var below = tree.Parent(k) < 0 ? null : paths[tree.Parent(k)];
             var isPart = below is not null && below.Profile.Count >= own.Count && below.Profile[0].Cell == own[0] && below.Profile[own.Count - 1].Cell == own[^1];
-            paths[k] = isPart ? below!.Upper(own.Count) : FlowPath.Of(own, elevation);
+            paths[k] = isPart ? below!.Upper(own.Count) : FlowPath.Of(own, elevation, scale);
         }
 
         return paths;

@@ -90,8 +90,10 @@ public sealed class RedButteTests : IClassFixture<RedButteTests.Runs>
     }
 
     [Fact]
-    public void AreasEqualCellsTimesCellAreaAndPolygonsAgree()
+    public void PolygonsEqualCellsTimesCellAreaAndAreasAreTrue()
     {
+        // Areal scale of EPSG:26912 at the gauge by PROJ (GeoCulvert.Layers.Tests/Data/plane_scales.csv); it changes by 1.2e-5 over the 3.5 km to the edges.
+        const double arealScale = 0.999312292106;
         const double cell = 26.477018215008027 * 26.477018215008943; // geotransform of the file, as gdalinfo prints it
         var path = Path.Combine(_runs.Along, "results", "results.gpkg");
         foreach (var layer in new[] { "watersheds", "local_watersheds" })
@@ -99,8 +101,8 @@ public sealed class RedButteTests : IClassFixture<RedButteTests.Runs>
             Assert.All(Geoculvert.Rows(path, layer), w =>
             {
                 var area = (double)w.Fields["area_km2"]! * 1e6;
-                Assert.Equal(Math.Round(area / cell), area / cell, 1e-5);
-                Assert.Equal(area, w.Geometry.Area, area * 1e-9);
+                Assert.Equal(Math.Round(w.Geometry.Area / cell), w.Geometry.Area / cell, 1e-5);
+                Assert.Equal(w.Geometry.Area / arealScale, area, area * 3e-5);
                 Assert.True(w.Geometry.IsValid);
             });
         }
