@@ -10,6 +10,7 @@ internal sealed class BreachSearch(Grid<float> surface, double maxLengthM, doubl
     public const double Fine = 1 << 20;
 
     private readonly OpenCells _open = new();
+    private readonly LowestBlocks _blocks = new(surface);
     private readonly List<int> _pool = [];
     private readonly long _longest = Units(maxLengthM);
     private readonly double _deepest = Math.Min(maxDepthM, 1e6);
@@ -24,6 +25,7 @@ internal sealed class BreachSearch(Grid<float> surface, double maxLengthM, doubl
     public int[]? CheapestWay(Pit pit, CancellationToken cancel)
     {
         var (z, frame, level) = (surface.Cells, surface.Frame, pit.LevelM);
+        if (!MayReach(pit)) return null;
         _open.Begin();
         foreach (var cell in pit.Flat ?? [pit.First]) _open.Reach(cell, 0, 0, -1);
         long turns = 0;
@@ -42,6 +44,16 @@ internal sealed class BreachSearch(Grid<float> surface, double maxLengthM, doubl
         }
 
         return null;
+    }
+
+    /// <summary>Lowers cells to a level.</summary>
+    public void Cut(List<int> cells, float levelM)
+    {
+        foreach (var cell in cells)
+        {
+            surface.Cells[cell] = levelM;
+            _blocks.Lower(cell, levelM);
+        }
     }
 
     /// <summary>What filling would take, m3: the pool whose level is the least at which water comes to a cell lower than the pit or leaves over the rim.</summary>
@@ -69,6 +81,22 @@ internal sealed class BreachSearch(Grid<float> surface, double maxLengthM, doubl
         }
 
         return _pool.Take(under).Sum(cell => (double)spill - z[cell]) * frame.CellAreaM2;
+    }
+
+    /// <summary>False when nothing lower and no way out lies within the longest cut, so that there is no need to look.</summary>
+    private bool MayReach(Pit pit)
+    {
+        var frame = surface.Frame;
+        var (top, left, bottom, right) = (int.MaxValue, int.MaxValue, 0, 0);
+        foreach (var cell in pit.Flat ?? [pit.First])
+        {
+            int row = cell / frame.Columns, column = cell % frame.Columns;
+            (top, left, bottom, right) = (Math.Min(top, row), Math.Min(left, column), Math.Max(bottom, row), Math.Max(right, column));
+        }
+
+        long rows = (long)Math.Min(frame.Rows, Math.Ceiling(_longest / Fine / frame.CellHeightM) + 1);
+        long columns = (long)Math.Min(frame.Columns, Math.Ceiling(_longest / Fine / frame.CellWidthM) + 1);
+        return _blocks.MayBeLower(pit.LevelM, (top, left, bottom, right), rows, columns);
     }
 
     private static long Units(double metres) => metres >= 1e12 ? long.MaxValue / 4 : (long)Math.Round(metres * Fine);

@@ -92,7 +92,7 @@ public static class DepressionBreaching
                 continue;
             }
 
-            foreach (var cell in cut) surface.Cells[cell] = pit.LevelM;
+            search.Cut(cut, pit.LevelM);
             made.Add((pit, way, cut, pool));
         }
 

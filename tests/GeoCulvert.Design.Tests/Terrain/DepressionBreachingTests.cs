@@ -94,6 +94,29 @@ public class DepressionBreachingTests
         },
         iter: 4000, print: p => RandomTerrain.Text(p.Item1) + p.Item2);
 
+    /// <summary>Larger grids, wide terraces with scattered pits and few holes: most pits have no lower ground within the length, so the shortcut that tells so decides.</summary>
+    [Fact]
+    public void EqualsTheNaiveOneWhereLowerGroundIsFar() => Gen.Select(Gen.Int[0, int.MaxValue], Gen.Double[1, 12], Gen.Int[2, 4]).Sample(
+        (seed, length, kinds) =>
+        {
+            var chance = new Random(seed);
+            var z = new Grid<float>(new GridFrame(100, 80, 0, 0, 1, 1.5));
+            for (var i = 0; i < z.Cells.Length; i++)
+            {
+                var terrace = 10 * ((i % 100 / 40) + (i / 100 / 50));
+                z.Cells[i] = chance.Next(3000) == 0 ? float.NaN : chance.Next(60) == 0 ? terrace - (chance.Next(kinds) / 2f) : terrace;
+            }
+
+            var settings = new BreachSettings(DepressionMethod.Breach, length, double.PositiveInfinity);
+            var expected = NaiveBreaching.Breach(z, settings);
+            var result = DepressionBreaching.Breach(z, settings);
+            Assert.Equal(expected.Ways, result.Breaches.Select(b => b.Cells));
+            Assert.Equal(expected.Surface, result.Surface.Cells);
+            Assert.Equal(expected.Left, result.Left);
+            Assert.True(result.Left > 0);
+        },
+        iter: 6);
+
     [Fact]
     public void NothingIsRaisedAndEveryCutKeepsItsLimits() => RandomTerrain.Any.Select(Settings).Sample(
         (elevation, settings) =>
