@@ -80,6 +80,36 @@ public class DepressionBreachingTests
         Assert.Equal([1, 1], result.Breaches.Select(b => b.EndLevelM));
     }
 
+    /// <summary>
+    /// The 1 is a pit; the cell at minus infinity two cells west of it is an outlet inside, no pit, and lower than anything: the cut through the 4 between them (3 m) is
+    /// cheaper than any way over the 9s of the rim. The outlet itself is not touched.
+    /// </summary>
+    [Fact]
+    public void AKeptSinkIsLowerGround()
+    {
+        var z = Rows(1, 1, "9 9 9 9 9", "9 7 4 1 9", "9 9 9 9 9");
+        z.Cells[6] = float.NegativeInfinity;
+        var result = DepressionBreaching.Breach(z, new BreachSettings(DepressionMethod.Mix, 100, 100), TestContext.Current.CancellationToken);
+        var breach = Assert.Single(result.Breaches);
+        Assert.Equal([8, 7, 6], breach.Cells);
+        Assert.Equal((1, 3, 3.0), (result.Pits, breach.VolumeM3, breach.PoolM3!.Value));
+        Assert.Equal([float.NegativeInfinity, 1, 1], result.Surface.Cells[6..9]);
+    }
+
+    /// <summary>
+    /// The 2 and the 1 lie behind rims of 9 that a limit of 3 m closes. From the 2 a cut of 2 m through the 4 reaches the 1, but the pool that fills the hollow to 9 covers it: it
+    /// is given back, and nothing is left of it.
+    /// </summary>
+    [Fact]
+    public void CutsUnderAPoolAreGivenBack()
+    {
+        var z = Rows(1, 1, "9 9 9 9 9", "9 2 4 1 9", "9 9 9 9 9");
+        var result = DepressionBreaching.Breach(z, new BreachSettings(DepressionMethod.Breach, 100, 3), TestContext.Current.CancellationToken);
+        Assert.Empty(result.Breaches);
+        Assert.Equal((2, 1, 1, 0L, 0), (result.Pits, result.Left, result.Drowned, result.CutCells, result.VolumeM3));
+        Assert.Equal(z.Cells, result.Surface.Cells);
+    }
+
     [Fact]
     public void EqualsTheNaiveOne() => Sixteenths.Select(Settings).Sample(
         (elevation, settings) =>

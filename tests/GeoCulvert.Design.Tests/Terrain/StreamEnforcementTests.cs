@@ -97,6 +97,17 @@ public class StreamEnforcementTests
         Assert.Contains(result.Streams[8].Findings, f => f.Code == "mapped-stream-turned");
     }
 
+    /// <summary>A kept sink on a stream breaks it in two: neither part is drawn down to minus infinity, the sink is untouched.</summary>
+    [Fact]
+    public void AKeptSinkBreaksAStream()
+    {
+        var z = Row2(6, 5, 7, 4, 3, 5, 2);
+        z.Cells[17] = float.NegativeInfinity;
+        var result = StreamEnforcement.Enforce(z, [Beck(0.5, 2.5, 6.5, 2.5)], new StreamSettings());
+        Assert.Equal([6, 5, 5, float.NegativeInfinity, 3, 3, 2], Cells(result.Surface, 14, 7));
+        Assert.Equal((2, 4), (result.Streams[0].Runs.Count, result.VolumeM3));
+    }
+
     /// <summary>
     /// The terrain model's own stream runs along row 0; the mapped one goes along row 2 for 2 m, then down the diagonal to row 4. With a reach of 3 cells cells in
     /// rows 0-3 agree, the end in row 4 does not: half of the last step of sqrt 2 of 2 + 2 sqrt 2 m. With a reach of 1 nothing agrees.
