@@ -1,5 +1,6 @@
 using System.Globalization;
 using System.Runtime.InteropServices;
+using GeoCulvert.Design.Basis;
 using NetTopologySuite.Geometries;
 
 namespace GeoCulvert.Layers;
@@ -25,6 +26,7 @@ public sealed unsafe class Crs : SafeHandle
         {
             nint vertical = 0;
             VerticalUnitM = Native.OSRGetTargetLinearUnits(handle, "VERT_CS", &vertical);
+            VerticalDatum = Native.Text(Native.OSRGetAttrValue(handle, "VERT_DATUM", 0));
         }
 
         Code = FindCode(handle);
@@ -53,6 +55,9 @@ public sealed unsafe class Crs : SafeHandle
 
     /// <summary>Size of the vertical unit of a compound system, m; null when the system has no vertical part.</summary>
     public double? VerticalUnitM { get; }
+
+    /// <summary>Name of the vertical datum of a compound system, "" when the system has no vertical part.</summary>
+    public string VerticalDatum { get; } = "";
 
     /// <summary>Well-known text, version 2 of 2019.</summary>
     public string Wkt
@@ -188,6 +193,7 @@ public sealed unsafe class Crs : SafeHandle
 /// <summary>Moves coordinates from one system to another.</summary>
 public sealed unsafe class CrsTransform : SafeHandle
 {
+    private const int KnownToM = 5;
     private readonly string _what;
 
     /// <summary>Creates the transform.</summary>
@@ -204,6 +210,19 @@ public sealed unsafe class CrsTransform : SafeHandle
 
     /// <inheritdoc/>
     public override bool IsInvalid => handle == 0;
+
+    /// <summary>What is not known about the way between two systems: PROJ has only a ballpark one, or none known to 5 m (own limit).</summary>
+    /// <param name="path">File that is moved.</param>
+    /// <param name="from">Its system.</param>
+    /// <param name="to">Where it is moved to.</param>
+    public static IEnumerable<Finding> Doubts(string path, Crs from, Crs to)
+    {
+        using Crs here = from.Horizontal(), there = to.Horizontal();
+        if (here.IsSameAs(there)) yield break;
+        var way = $"{path}: from {from.Label} to {to.Label} ";
+        if (!Exists(here, there, o => Native.OCTCoordinateTransformationOptionsSetBallparkAllowed(o, 0))) yield return LayerFindings.DatumShift.With(way + "no way is known, the datums were taken as one");
+        else if (!Exists(here, there, o => Native.OCTCoordinateTransformationOptionsSetDesiredAccuracy(o, KnownToM))) yield return LayerFindings.DatumShift.With(way + $"no way is known to {KnownToM} m");
+    }
 
     /// <summary>Moves coordinates in place; heights stay.</summary>
     /// <exception cref="GdalException">A coordinate has no image.</exception>
@@ -234,6 +253,17 @@ public sealed unsafe class CrsTransform : SafeHandle
     {
         Native.OCTDestroyCoordinateTransformation(handle);
         return true;
+    }
+
+    private static bool Exists(Crs from, Crs to, Func<nint, int> set)
+    {
+        var options = Native.OCTNewCoordinateTransformationOptions();
+        _ = set(options);
+        var transform = Native.OCTNewCoordinateTransformationEx(from.Pointer, to.Pointer, options);
+        Native.OCTDestroyCoordinateTransformationOptions(options);
+        if (transform != 0) Native.OCTDestroyCoordinateTransformation(transform);
+        Gdal.Clear();
+        return transform != 0;
     }
 
     private sealed class Moving(CrsTransform transform) : IEntireCoordinateSequenceFilter

@@ -46,17 +46,14 @@ public sealed record ElevationModel(Grid<float> Elevation, WorkingPlane Plane, I
 {
     /// <summary>How true to size the plane is over the grid; none where it is within 0.02 %.</summary>
     public PlaneScale Scale { get; init; } = PlaneScale.None;
+
+    /// <summary>Name of the vertical datum as the file says it, or "".</summary>
+    public string VerticalDatum { get; init; } = "";
 }
 
 /// <summary>Reads terrain models and class rasters onto one grid.</summary>
 public static class ElevationReader
 {
-    // No land lies lower than the shore of the Dead Sea (about -430 m) or higher than Mount Everest (8849 m): common knowledge, with a margin for mines.
-    private const float LowestLandM = -600, HighestLandM = 9000;
-
-    // Values like -3.4e38 stand for nodata whose tag was rounded or lost.
-    private const float BeyondAnyNumberOfMetres = 1e9f;
-
     private static readonly (string Word, double InM)[] UnitWords =
     [
         ("m", 1), ("metre", 1), ("metres", 1), ("meter", 1), ("meters", 1),
@@ -73,16 +70,16 @@ public static class ElevationReader
     {
         ArgumentNullException.ThrowIfNull(source);
         ArgumentNullException.ThrowIfNull(options);
-        var findings = new List<Finding>();
+        var findings = new List<Finding>(source.Findings);
         var (crs, verticalM) = Check(source, options, findings);
         using var from = crs.Horizontal();
         var working = PlaneChoice.Of(source, options.WorkingCrs, from, findings);
         var grid = from.IsProjected && from.IsSameAs(working) && source.GeoTransform is [_, > 0, 0, _, 0, not 0] && options.CellSizeM is null
-            ? ReadAsItLies(source, options, working)
-            : ReadWarped(source, options, from, working, findings);
-        InMetres(grid, (float)verticalM, source.Path, findings);
+            ? ReadAsItLies(source, options, working, (float)verticalM, findings)
+            : ReadWarped(source, options, from, working, (float)verticalM, findings);
+        InMetres(grid, (float)verticalM);
         var scale = PlaneChoice.Judge(grid.Frame, working, source.Path, options.WorkingCrs is not null, findings);
-        return new ElevationModel(grid, new WorkingPlane(working), findings) { Scale = scale };
+        return new ElevationModel(grid, new WorkingPlane(working), findings) { Scale = scale, VerticalDatum = crs.VerticalDatum };
     }
 
     /// <summary>Checks what the file and the project say, without reading a cell.</summary>
@@ -100,6 +97,7 @@ public static class ElevationReader
             problems.Add(new InputProblem(source.Path, "no coordinate system", "a file that says its own, or [terrain] crs in the project file, for example \"EPSG:26912\""));
         else if (!crs.IsGeographic && !crs.IsProjected)
             problems.Add(new InputProblem(source.Path, $"the coordinate system {crs.Label}", "a geographic or a projected one"));
+        problems.AddRange(RasterDoubts.Of(source, crs, findings));
         if (source.Crs is not null && options.Crs is not null && !source.Crs.IsSameAs(options.Crs))
             findings.Add(LayerFindings.CrsStatedDiffers.With($"{source.Path} says {source.Crs.Label}, the project {options.Crs.Label}; the file's was used"));
         if (options.WorkingCrs is { IsProjected: false })
@@ -131,47 +129,57 @@ public static class ElevationReader
         return UnitWords.Where(u => u.Word == word).Select(u => (double?)u.InM).FirstOrDefault();
     }
 
-    /// <summary>Brings elevations to metres; what is no number or beyond any number of metres becomes nodata, what is beyond the Earth is said.</summary>
-    private static void InMetres(Grid<float> grid, float verticalM, string path, List<Finding> findings)
+    /// <summary>Brings elevations to metres; what is no number or beyond any number of metres becomes nodata.</summary>
+    private static void InMetres(Grid<float> grid, float verticalM)
     {
-        long doubtful = 0;
-        float first = 0;
-        foreach (ref var z in grid.Cells.AsSpan())
-        {
-            if (!(MathF.Abs(z) < BeyondAnyNumberOfMetres))
-            {
-                z = float.NaN;
-                continue;
-            }
-
-            var stored = z;
-            z *= verticalM;
-            if (z is >= LowestLandM and <= HighestLandM) continue;
-            if (doubtful++ == 0) first = stored;
-        }
-
-        if (doubtful > 0)
-            findings.Add(LayerFindings.ElevationsDoubtful.With(string.Create(CultureInfo.InvariantCulture, $"{path}: {doubtful} of {grid.Frame.Count} cells, for example {first:0.###}")));
+        foreach (ref var z in grid.Cells.AsSpan()) z = StoredElevations.IsElevation(z) ? z * verticalM : float.NaN;
     }
 
-    private static Grid<float> ReadAsItLies(RasterSource source, ElevationOptions options, Crs crs)
+    /// <summary>Looks at a raster before it is projected: blended with its neighbours, a value that stands for nodata is no longer known.</summary>
+    private static void LookAt(RasterSource source, ElevationOptions options, float verticalM, List<Finding> findings)
+    {
+        var stored = new StoredElevations(source, verticalM);
+        var step = Math.Clamp((1 << 22) / source.Columns, 1, source.Rows);
+        var rows = new float[checked(step * source.Columns)];
+        for (var row = 0; row < source.Rows; row += step)
+        {
+            var height = Math.Min(step, source.Rows - row);
+            var some = rows.AsSpan(0, height * source.Columns);
+            source.ReadWindow(0, row, source.Columns, height, some, options.NoData);
+            stored.Add(some);
+        }
+
+        stored.Conclude(findings);
+    }
+
+    private static Grid<float> ReadAsItLies(RasterSource source, ElevationOptions options, Crs crs, float verticalM, List<Finding> findings)
     {
         var g = source.GeoTransform;
         var unit = crs.LinearUnitM;
         var north = g[5] < 0 ? g[3] : g[3] + (g[5] * source.Rows);
         var frame = new GridFrame(source.Columns, source.Rows, g[0] * unit, north * unit, g[1] * unit, Math.Abs(g[5]) * unit);
         var grid = Read(source, options, frame);
+        var stored = new StoredElevations(source, verticalM);
+        stored.Add(grid.Cells);
+        stored.Conclude(findings);
         if (g[5] > 0) FlipRows(grid);
         return grid;
     }
 
-    private static Grid<float> ReadWarped(RasterSource source, ElevationOptions options, Crs crs, Crs working, List<Finding> findings)
+    private static Grid<float> ReadWarped(RasterSource source, ElevationOptions options, Crs crs, Crs working, float verticalM, List<Finding> findings)
+    {
+        LookAt(source, options, verticalM, findings);
+        findings.AddRange(CrsTransform.Doubts(source.Path, crs, working));
+        return Warped(source, options, crs, working, findings);
+    }
+
+    private static Grid<float> Warped(RasterSource source, ElevationOptions options, Crs crs, Crs working, List<Finding> findings)
     {
         if (options.NoData is { } stated && source.NoData is { } tagged && !stated.Equals(tagged))
         {
             // The warp knows one nodata value; with two the cells are cleaned first, so that neither bleeds into its neighbours.
             using var cleaned = source.Cleaned(stated);
-            return ReadWarped(cleaned, options with { NoData = null }, crs, working, findings);
+            return Warped(cleaned, options with { NoData = null }, crs, working, findings);
         }
 
         var arguments = new List<string> { "-s_srs", crs.Wkt, "-t_srs", working.Wkt, "-r", "bilinear", "-ot", "Float32", "-dstnodata", "nan" };

@@ -29,6 +29,9 @@ internal static unsafe partial class Native
     [LibraryImport(L)] public static partial int GDALSetSpatialRef(nint dataset, nint srs);
     [LibraryImport(L)] public static partial nint GDALGetRasterBand(nint dataset, int band);
     [LibraryImport(L)] public static partial int GDALGetRasterDataType(nint band);
+    [LibraryImport(L)] public static partial int GDALGetRasterColorInterpretation(nint band);
+    [LibraryImport(L)] public static partial nint GDALGetFileList(nint dataset);
+    [LibraryImport(L)] public static partial void CSLDestroy(nint list);
     [LibraryImport(L)] public static partial double GDALGetRasterNoDataValue(nint band, int* has);
     [LibraryImport(L)] public static partial int GDALSetRasterNoDataValue(nint band, double value);
     [LibraryImport(L)] public static partial nint GDALGetRasterUnitType(nint band);
@@ -75,6 +78,11 @@ internal static unsafe partial class Native
     [LibraryImport(L)] public static partial int OSRAutoIdentifyEPSG(nint srs);
     [LibraryImport(L)] public static partial int OSRExportToWktEx(nint srs, nint* text, nint options);
     [LibraryImport(L)] public static partial nint OCTNewCoordinateTransformation(nint from, nint to);
+    [LibraryImport(L)] public static partial nint OCTNewCoordinateTransformationEx(nint from, nint to, nint options);
+    [LibraryImport(L)] public static partial nint OCTNewCoordinateTransformationOptions();
+    [LibraryImport(L)] public static partial int OCTCoordinateTransformationOptionsSetDesiredAccuracy(nint options, double metres);
+    [LibraryImport(L)] public static partial int OCTCoordinateTransformationOptionsSetBallparkAllowed(nint options, int allowed);
+    [LibraryImport(L)] public static partial void OCTDestroyCoordinateTransformationOptions(nint options);
     [LibraryImport(L)] public static partial void OCTDestroyCoordinateTransformation(nint transform);
     [LibraryImport(L)] public static partial int OCTTransform(nint transform, int count, double* x, double* y, double* z);
 

@@ -20,7 +20,8 @@ public sealed unsafe class RasterSource : IDisposable
         (Path, _dataset, _parts) = (path, new DatasetHandle(dataset), parts);
         Columns = Native.GDALGetRasterXSize(dataset);
         Rows = Native.GDALGetRasterYSize(dataset);
-        if (Native.GDALGetRasterCount(dataset) < 1) throw new InputException(path, "no raster band", "a raster with at least one band");
+        Bands = Native.GDALGetRasterCount(dataset);
+        if (Bands < 1) throw new InputException(path, "no raster band", "a raster with at least one band");
         _band = Native.GDALGetRasterBand(dataset, 1);
         var six = stackalloc double[6];
         HasGeoTransform = Native.GDALGetGeoTransform(dataset, six) == 0;
@@ -31,6 +32,7 @@ public sealed unsafe class RasterSource : IDisposable
         NoData = has != 0 ? nodata : null;
         UnitName = Native.Text(Native.GDALGetRasterUnitType(_band));
         DataType = Native.GDALGetRasterDataType(_band);
+        ColourInterpretation = Native.GDALGetRasterColorInterpretation(_band);
         var scale = Native.GDALGetRasterScale(_band, &has);
         Scale = has != 0 && scale != 0 ? scale : 1;
         var offset = Native.GDALGetRasterOffset(_band, &has);
@@ -71,6 +73,18 @@ public sealed unsafe class RasterSource : IDisposable
     /// <summary>Added to stored values after the factor.</summary>
     public double Offset { get; }
 
+    /// <summary>Number of bands; the first is read.</summary>
+    public int Bands { get; }
+
+    /// <summary>GDAL's number for what the first band's values mean as colours: 0 and 1 nothing, 2 palette, 3 to 6 red, green, blue, alpha.</summary>
+    internal int ColourInterpretation { get; }
+
+    /// <summary>Doubts of joining tiles.</summary>
+    public IReadOnlyList<Finding> Findings { get; internal init; } = [];
+
+    /// <summary>Every file that is read: each tile with its sidecars, and what a VRT names.</summary>
+    public IReadOnlyList<string> Files => [.. _parts.SelectMany(p => p.Files).Concat(OwnFiles()).Distinct(StringComparer.Ordinal)];
+
     /// <summary>Whether rows run south and columns east, without rotation.</summary>
     public bool IsNorthUp => GeoTransform[1] > 0 && GeoTransform[5] < 0 && GeoTransform[2] == 0 && GeoTransform[4] == 0;
 
@@ -92,8 +106,10 @@ public sealed unsafe class RasterSource : IDisposable
     }
 
     /// <summary>Opens one file, several, or the rasters of a folder as one.</summary>
+    /// <param name="paths">Files and folders.</param>
+    /// <param name="statedNoData">Nodata of tiles that do not say their own.</param>
     /// <exception cref="InputException">One of them cannot be used, or they do not share coordinate system, unit, scale and direction.</exception>
-    public static RasterSource OpenMany(IReadOnlyList<string> paths)
+    public static RasterSource OpenMany(IReadOnlyList<string> paths, double? statedNoData = null)
     {
         ArgumentNullException.ThrowIfNull(paths);
         var files = paths.SelectMany(p => Directory.Exists(p)
@@ -101,7 +117,7 @@ public sealed unsafe class RasterSource : IDisposable
             : Enumerable.Repeat(p, 1)).ToArray();
         if (files.Length == 0) throw new InputException(string.Join(", ", paths), "no raster in the folder", "files ending in .tif, .tiff, .asc, .img, .vrt, .bil or .flt");
         if (files.Length == 1) return Open(files[0]);
-        return RasterTiles.Join(string.Join(", ", paths), files);
+        return RasterTiles.Join(string.Join(", ", paths), files, statedNoData);
     }
 
     /// <summary>The raster as it would be after projection; nothing is computed until it is read.</summary>
@@ -183,6 +199,15 @@ public sealed unsafe class RasterSource : IDisposable
         Crs?.Dispose();
         _dataset.Dispose();
         foreach (var part in _parts) part.Dispose();
+    }
+
+    private List<string> OwnFiles()
+    {
+        var list = Native.GDALGetFileList(Dataset);
+        var files = new List<string>();
+        for (var i = 0; list != 0 && ((nint*)list)[i] != 0; i++) files.Add(Native.Text(((nint*)list)[i]));
+        Native.CSLDestroy(list);
+        return files;
     }
 
     private InputException Damaged(int column, int row) => new(

@@ -13,8 +13,9 @@ internal static unsafe class RasterTiles
     /// <summary>Joins rasters; later ones lie on top of earlier ones.</summary>
     /// <param name="shown">Path as the user knows the whole.</param>
     /// <param name="files">At least two files.</param>
+    /// <param name="statedNoData">Nodata of tiles that do not say their own, so that it covers no cell of another tile.</param>
     /// <exception cref="InputException">A tile cannot be opened or does not fit the first.</exception>
-    public static RasterSource Join(string shown, IReadOnlyList<string> files)
+    public static RasterSource Join(string shown, IReadOnlyList<string> files, double? statedNoData)
     {
         var open = new List<RasterSource>();
         try
@@ -22,10 +23,11 @@ internal static unsafe class RasterTiles
             foreach (var file in files) open.Add(RasterSource.Open(file));
             var problems = open.SelectMany(t => Differences(t, open[0])).ToList();
             if (problems.Count > 0) throw new InputException(problems);
+            var findings = TileDoubts.Of(open, statedNoData);
             var type = open.All(t => t.DataType is >= 1 and <= Int32 and not 4) ? Int32 : open.Any(t => t.DataType is 4 or Float64) ? Float64 : Float32;
-            var alike = open.Select(t => Typed(t, type)).ToList();
+            var alike = open.Select(t => Typed(t, type, statedNoData)).ToList();
             open.AddRange(alike); // a tile in its new type reads from the one as it was
-            return new RasterSource(shown, Joined(alike, type), [.. Enumerable.Reverse(open)]);
+            return new RasterSource(shown, Joined(alike, type), [.. Enumerable.Reverse(open)]) { Findings = findings };
         }
         catch
         {
@@ -46,10 +48,12 @@ internal static unsafe class RasterTiles
             yield return new InputProblem(tile.Path, $"a scale of {tile.Scale} and offset of {tile.Offset}", $"those of the first tile, {first.Scale} and {first.Offset}");
     }
 
-    private static RasterSource Typed(RasterSource tile, int type)
+    private static RasterSource Typed(RasterSource tile, int type, double? statedNoData)
     {
         Gdal.Clear();
-        using var arguments = new NativeList("-of", "VRT", "-b", "1", "-ot", type switch { Int32 => "Int32", Float32 => "Float32", _ => "Float64" });
+        List<string> wanted = ["-of", "VRT", "-b", "1", "-ot", type switch { Int32 => "Int32", Float32 => "Float32", _ => "Float64" }];
+        if (tile.NoData is null && statedNoData is { } stated) wanted.AddRange(["-a_nodata", stated.ToString("R", System.Globalization.CultureInfo.InvariantCulture)]);
+        using var arguments = new NativeList(wanted);
         var options = Native.GDALTranslateOptionsNew(arguments.Pointer, 0);
         int wrong;
         var made = Native.GDALTranslate("", tile.Dataset, options, &wrong);

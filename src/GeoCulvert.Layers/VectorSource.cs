@@ -22,7 +22,11 @@ public sealed record VectorFeature(long Id, Geometry Geometry, IReadOnlyDictiona
 /// <param name="Findings">Features that cannot, and why.</param>
 /// <param name="Crs">The layer's own coordinate system.</param>
 public sealed record VectorLayer(
-    string LayerName, IReadOnlyList<string> FieldNames, IReadOnlyList<VectorFeature> Features, IReadOnlyList<Finding> Findings, string Crs);
+    string LayerName, IReadOnlyList<string> FieldNames, IReadOnlyList<VectorFeature> Features, IReadOnlyList<Finding> Findings, string Crs)
+{
+    /// <summary>What is known of the heights of its coordinates.</summary>
+    public LayerHeights Heights { get; init; } = LayerHeights.None;
+}
 
 /// <summary>Reads vector layers in any format GDAL knows.</summary>
 public static unsafe class VectorSource
@@ -119,7 +123,9 @@ public static unsafe class VectorSource
 
         var says = Gdal.Says();
         if (says.Length > 0) throw new InputException(path, $"features that GDAL cannot read ({says})", "a whole, undamaged vector file");
-        return new VectorLayer(Native.Text(Native.OGR_L_GetName(layer)), [.. fields.Select(f => f.Name)], features, findings, crs.Label);
+        findings.AddRange(CrsTransform.Doubts(path, crs, plane.Crs));
+        var heights = LayerHeights.InMetres(features.Select(f => f.Geometry), crs);
+        return new VectorLayer(Native.Text(Native.OGR_L_GetName(layer)), [.. fields.Select(f => f.Name)], features, findings, crs.Label) { Heights = heights };
     }
 
     private static (Geometry? Geometry, string Wrong) Shape(nint reference, Crs crs, WorkingPlane plane)

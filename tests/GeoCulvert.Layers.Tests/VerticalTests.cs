@@ -66,11 +66,11 @@ public class VerticalTests
     [Fact]
     public void ElevationsThatNoLandHasAreSaid()
     {
-        using var source = RasterSource.Open(Files.Raster(Files.NewFolder(), "a", "7 -9999 7\n7 7 -9999", "EPSG:26912"));
+        using var source = RasterSource.Open(Files.Raster(Files.NewFolder(), "a", "7 -8000 7\n7 7 -8000", "EPSG:26912"));
         var finding = Assert.Single(ElevationReader.Read(source, new ElevationOptions(VerticalUnitM: 1)).Findings);
         Assert.Equal("elevations-doubtful", finding.Code);
-        Assert.Contains("2 of 6 cells, for example -9999", finding.ToString(), StringComparison.Ordinal);
-        Assert.Empty(ElevationReader.Read(source, new ElevationOptions(NoData: -9999, VerticalUnitM: 1)).Findings);
+        Assert.Contains("2 of 6 cells, for example -8000", finding.ToString(), StringComparison.Ordinal);
+        Assert.Empty(ElevationReader.Read(source, new ElevationOptions(NoData: -8000, VerticalUnitM: 1)).Findings);
     }
 
     [Fact]
