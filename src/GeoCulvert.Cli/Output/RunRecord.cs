@@ -27,6 +27,7 @@ internal static class RunRecord
             json.WriteNumber("bytes", input.Bytes);
             json.WriteString("sha256", input.Sha256);
             json.WriteString("crs", input.Crs);
+            if (input.NoData.Length > 0) json.WriteString("nodata", input.NoData);
             json.WriteEndObject();
         }
 

@@ -10,7 +10,7 @@ namespace GeoCulvert.Cli.Project;
 /// <summary>Terrain, roads, points and class rasters of a project.</summary>
 internal sealed partial class StudyLoader
 {
-    private (ElevationModel? Model, WorkingPlane? Plane, string Crs) Terrain(bool checkOnly)
+    private (ElevationModel? Model, WorkingPlane? Plane, string Crs) Terrain()
     {
         var terrain = _project["terrain"];
         var shown = terrain.Texts("dem");
@@ -24,12 +24,13 @@ internal sealed partial class StudyLoader
             CrsOf("crs"), CrsOf("working_crs"), terrain.Number("nodata"), terrain.Text("vertical_unit") is { } unit ? Units.Get(unit).InSi : null, terrain.Number("cell_size"));
         try
         {
-            using var source = RasterSource.OpenMany([.. shown.Select(_project.Full)]);
+            using var source = RasterSource.OpenMany([.. shown.Select(_project.Full)], options.NoData);
             var (crs, _) = ElevationReader.Check(source, options, []);
-            foreach (var file in shown) _files.Add(InputFacts.Of(file, _project.Full(file), "terrain", crs.Label));
+            foreach (var file in source.Files) _files.Add(InputFacts.Of(Shown(file, shown), file, "terrain", crs.Label) with { NoData = NoDataText(source.NoData, options.NoData) });
             var model = ElevationReader.Read(source, options);
             _findings.AddRange(model.Findings);
-            if (!checkOnly && model.Elevation.Cells.AsSpan().IndexOfAnyExcept(float.NaN) < 0)
+            _terrainDatum = model.VerticalDatum;
+            if (model.Elevation.Cells.AsSpan().IndexOfAnyExcept(float.NaN) < 0)
                 _problems.Add(new InputProblem(_project.Place(terrain, "dem"), "no cell with data", "a terrain model with elevations"));
             return (model, model.Plane, crs.Label);
         }
@@ -46,6 +47,13 @@ internal sealed partial class StudyLoader
         }
     }
 
+    /// <summary>A file as the project names it, or by its way from the project's folder: no folder of this machine goes into a record.</summary>
+    private string Shown(string file, IReadOnlyList<string> named) =>
+        named.FirstOrDefault(n => _project.Full(n) == file) ?? (file.StartsWith("/vsi", StringComparison.Ordinal) ? file : Path.GetRelativePath(_project.Folder, file));
+
+    private static string NoDataText(double? tagged, double? stated) => string.Join(
+        ", ", new[] { tagged is { } t ? $"{t:R} (file)" : null, stated is { } s ? $"{s:R} (project)" : null }.OfType<string>());
+
     private List<StudyRoad> Roads(WorkingPlane plane, GridFrame? frame)
     {
         var roads = new List<StudyRoad>();
@@ -58,6 +66,7 @@ internal sealed partial class StudyLoader
                 var layer = VectorSource.Read(path, table.Text("layer"), table.Text("where"), plane);
                 _files.Add(InputFacts.Of(table.Text("file")!, path, "road", layer.Crs));
                 _findings.AddRange(layer.Findings);
+                if (!table.Has("profile")) _findings.AddRange(layer.Heights.Doubts(table.Text("file")!, _terrainDatum));
                 roads.AddRange(RoadsOf(table, layer, frame));
                 return layer;
             });

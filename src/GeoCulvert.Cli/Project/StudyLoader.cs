@@ -30,6 +30,7 @@ internal sealed partial class StudyLoader
     private readonly List<InputFact> _files = [];
     private readonly string _shownName;
     private UnitPrices? _prices;
+    private string _terrainDatum = "";
 
     private StudyLoader(ProjectFile project, string shownName) => (_project, _shownName, _problems) = (project, shownName, [.. project.Problems]);
 
@@ -56,7 +57,7 @@ internal sealed partial class StudyLoader
 
     private LoadedStudy Assemble(string fullPath, bool checkOnly)
     {
-        var (elevation, plane, _) = Terrain(checkOnly);
+        var (elevation, plane, _) = Terrain();
         var roads = plane is null ? NameRoadFiles() : Roads(plane, elevation?.Elevation.Frame);
         var points = plane is null ? NameFile("crossings", "points", "crossings") : Points(plane);
         var culverts = plane is null ? null : KnownCulverts(plane);

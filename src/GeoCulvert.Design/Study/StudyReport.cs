@@ -155,7 +155,11 @@ public sealed record CrossingSheet
 /// <param name="Bytes">Size.</param>
 /// <param name="Sha256">Hash, lower-case hexadecimal.</param>
 /// <param name="Crs">Coordinate system as read, "" for plain tables.</param>
-public sealed record InputFact(string Path, string Role, long Bytes, string Sha256, string Crs);
+public sealed record InputFact(string Path, string Role, long Bytes, string Sha256, string Crs)
+{
+    /// <summary>Values taken as nodata and who said so, "" when none.</summary>
+    public string NoData { get; init; } = "";
+}
 
 /// <summary>Everything a report and a schedule are made from.</summary>
 public sealed record StudyReport
