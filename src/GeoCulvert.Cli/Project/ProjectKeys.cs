@@ -38,6 +38,18 @@ internal static class ProjectKeys
         Length("terrain", "cell_size", null, "cell size after a geographic terrain model is projected; default: its own spacing", 0.01),
         new("terrain", "stream_area", KeyKind.Quantity, "\"10 ha\"", "drainage area at which a stream begins") { Dimension = "area", Least = 1 },
 
+        new("terrain", "streams", KeyKind.Path, null, "streams from a map; the terrain model is cut so that water follows them"),
+        new("terrain", "streams_layer", KeyKind.Text, null, "layer in the file; default: its first"),
+        new("terrain", "streams_where", KeyKind.Text, null, "filter on the fields"),
+        new("terrain", "streams_name", KeyKind.Text, null, "field that holds their names"),
+        new("terrain", "streams_drawn", KeyKind.Choice, "\"any\"", "whether every line is known to be drawn downstream; any: the terrain decides line by line") { Words = ["any", "downstream"] },
+        new("terrain", "depressions", KeyKind.Choice, "\"fill\"", "what is done with depressions: filled, cut open where the limits allow, or whichever moves less earth") { Words = ["fill", "breach", "mix"] },
+        Length("terrain", "breach_length", "\"50 m\"", "longest cut of a depression (own rule)", 0),
+        Length("terrain", "breach_depth", "\"3 m\"", "deepest cut of a depression (own rule)", 0),
+        new("terrain", "closed_basins", KeyKind.Path, null, "points in closed basins that are kept as sinks: their land drains to no crossing"),
+        new("terrain", "closed_basins_name", KeyKind.Text, null, "field that holds their names"),
+        new("terrain", "keep_basin_area", KeyKind.Quantity, null, "area from which every depression is kept as a closed basin; default: only those named by points") { Dimension = "area", Least = 1 },
+        Length("terrain", "keep_basin_depth", "\"1 m\"", "depth from which it is kept, beside its area (own rule)", 0),
         new("terrain", "openings", KeyKind.Choice, "\"search\"", "where embankments that dam the terrain model are opened: by search along the roads, at known culverts and given crossings only, or nowhere") { Words = ["search", "known", "none"] },
         new("terrain", "culverts", KeyKind.Path, null, "lines of culverts known to be there; embankments are opened along them"),
         new("terrain", "culverts_layer", KeyKind.Text, null, "layer in the file; default: its first"),
@@ -155,7 +167,6 @@ internal static class ProjectKeys
     /// <summary>Keys that are planned and not computed yet: saying so beats taking them for a slip of the pen.</summary>
     public static readonly IReadOnlyDictionary<string, string> NotYet = new Dictionary<string, string>(StringComparer.Ordinal)
     {
-        ["[terrain] streams"] = "mapped streams are not enforced yet; streams come from stream_area",
         ["[rainfall] rasters"] = "rainfall rasters are not read yet; give a table",
         ["[tailwater] rating"] = "tailwater ratings are not read yet; use normal-depth or fixed",
     };

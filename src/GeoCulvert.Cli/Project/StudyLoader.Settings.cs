@@ -4,6 +4,7 @@ using GeoCulvert.Design.Hydraulics;
 using GeoCulvert.Design.Hydrology;
 using GeoCulvert.Design.Sizing;
 using GeoCulvert.Design.Study;
+using GeoCulvert.Design.Terrain;
 using GeoCulvert.Layers;
 
 namespace GeoCulvert.Cli.Project;
@@ -204,6 +205,18 @@ internal sealed partial class StudyLoader
         _problems.Add(new InputProblem($"{_shownName}, [flow] runoff_coefficient", "no runoff coefficient", "runoff_coefficient = 0.35 or the like, or [cover] land_cover, since methods names \"rational\""));
     }
 
+    private static ConditioningSettings ConditioningOf(ProjectTable terrain) => new()
+    {
+        Breaching = terrain.Text("depressions") switch
+        {
+            "breach" => new BreachSettings(DepressionMethod.Breach, terrain.Needed("breach_length"), terrain.Needed("breach_depth")),
+            "mix" => new BreachSettings(DepressionMethod.Mix, terrain.Needed("breach_length"), terrain.Needed("breach_depth")),
+            _ => null,
+        },
+        Streams = new StreamSettings { DrawnDownstream = terrain.Text("streams_drawn") == "downstream" },
+        KeepBasins = terrain.Number("keep_basin_area") is { } area ? new BasinLimits(area, terrain.Needed("keep_basin_depth")) : null,
+    };
+
     private StudySettings Settings(FlowSettings flow, CulvertCatalogue catalogue)
     {
         var (criteria, tailwater) = (_project["criteria"], _project["tailwater"]);
@@ -214,6 +227,7 @@ internal sealed partial class StudyLoader
             StreamAreaM2 = _project["terrain"].Needed("stream_area"),
             CrossDrainAreaM2 = _project["crossings"].Needed("cross_drain_area"),
             RoadsTogetherM = _project["crossings"].Needed("together"),
+            Conditioning = ConditioningOf(_project["terrain"]),
             Openings = new OpeningSettings
             {
                 Scope = _project["terrain"].Text("openings") switch { "known" => OpeningScope.Known, "none" => OpeningScope.None, _ => OpeningScope.Search },

@@ -61,6 +61,8 @@ internal sealed partial class StudyLoader
         var roads = plane is null ? NameRoadFiles() : Roads(plane, elevation?.Elevation.Frame);
         var points = plane is null ? NameFile("crossings", "points", "crossings") : Points(plane);
         var culverts = plane is null ? null : KnownCulverts(plane);
+        var mapped = plane is null ? null : MappedStreams(plane);
+        var basins = plane is null ? null : BasinPoints(plane);
         var inventory = plane is null ? null : Inventory(plane);
         if (inventory is { } existing)
         {
@@ -100,6 +102,8 @@ internal sealed partial class StudyLoader
             Roads = roads,
             Points = points,
             KnownCulverts = culverts ?? [],
+            MappedStreams = mapped ?? [],
+            BasinPoints = basins ?? [],
             Inventory = inventory?.Barrels ?? [],
             LandCover = landCover,
             SoilGroup = soilGroup,

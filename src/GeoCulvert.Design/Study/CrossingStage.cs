@@ -24,14 +24,20 @@ public static class CrossingStage
     /// <summary>Share by which the area with and without openings must differ for both outlines to be kept (own rule).</summary>
     public const double AreaDiffersShare = 0.01;
 
-    /// <summary>Drains the terrain and opens the embankments that dam it.</summary>
-    public static OpenedTerrain Drain(StudyInputs inputs, StudySettings settings, IProgress<double> progress, CancellationToken cancel)
+    /// <summary>Opens the embankments that dam a terrain.</summary>
+    /// <param name="inputs">Roads, known culverts and given crossings.</param>
+    /// <param name="settings">Settings.</param>
+    /// <param name="elevation">The terrain; the same again afterwards.</param>
+    /// <param name="solve">Drains a terrain, with the paths that water is made to take.</param>
+    /// <param name="cancel">Stops the work.</param>
+    public static OpenedTerrain Open(
+        StudyInputs inputs, StudySettings settings, Grid<float> elevation, Func<Grid<float>, IReadOnlyList<int[]>, DrainedTerrain> solve, CancellationToken cancel)
     {
         ArgumentNullException.ThrowIfNull(inputs);
         ArgumentNullException.ThrowIfNull(settings);
-        var shown = inputs.Roads.Select(r => r.Alignment).Where(r => ShowsBanks(r, inputs.Elevation.Frame)).ToArray();
-        return EmbankmentOpenings.Solve(
-            inputs.Elevation, shown, inputs.KnownCulverts, inputs.Points ?? [], Openings(settings), (z, paths) => Drainage.Solve(z, paths, progress, cancel), cancel);
+        ArgumentNullException.ThrowIfNull(elevation);
+        var shown = inputs.Roads.Select(r => r.Alignment).Where(r => ShowsBanks(r, elevation.Frame)).ToArray();
+        return EmbankmentOpenings.Solve(elevation, shown, inputs.KnownCulverts, inputs.Points ?? [], Openings(settings), solve, cancel);
     }
 
     /// <summary>Finds crossings along the roads, or moves given ones to their streams.</summary>

@@ -21,8 +21,8 @@ public static class DrainageStudy
         ArgumentNullException.ThrowIfNull(stages);
         var frame = inputs.Elevation.Frame;
 
-        // Make water leave: embankments opened, depressions filled, flats drained, directions and accumulation.
-        var opened = stages.Run("terrain", frame.Count, p => CrossingStage.Drain(inputs, settings, p, cancel));
+        // Make water leave: mapped streams enforced, embankments opened, depressions kept, cut or filled; directions and accumulation.
+        var (opened, conditioning) = stages.Run("terrain", frame.Count, p => ConditioningStage.Drain(inputs, settings, p, cancel));
         var terrain = opened.Terrain;
         cancel.ThrowIfCancellationRequested();
 
@@ -42,10 +42,11 @@ public static class DrainageStudy
             .Where(s => s.Cells.Length > 1)
             .Select(s => new StreamResult(new LineString([.. s.Cells.Select(c => Centre(frame, c))]), s.LowerAccumulationCells * frame.CellAreaM2 * ScaleAt(s.Cells[^1]), s.Order));
         var roads = inputs.Roads.Select(r => new RoadResult(r.Alignment.Name, r.Class.Name, r.Alignment.Line, r.Alignment.WidthM, r.Alignment.Surface));
-        var whole = terrain.Findings.Concat(found.Findings).Concat(RunFindings(inputs, found.Crossings));
+        var whole = terrain.Findings.Concat(conditioning.Findings).Concat(found.Findings).Concat(RunFindings(inputs, found.Crossings));
         return new StudyResult(terrain, crossings, [.. streams], [.. roads], [.. whole.Concat(crossings.SelectMany(c => c.Findings))])
         {
             Openings = openings,
+            Conditioning = conditioning,
             Untouched = CrossingStage.Untouched(opened, openings),
             Changes = CrossingIdentity.Changes(inputs.Former, crossings),
         };

@@ -31,6 +31,12 @@ public sealed record StudyInputs
     /// <summary>Culverts known to be there; embankments are opened along them.</summary>
     public IReadOnlyList<KnownCulvert> KnownCulverts { get; init; } = [];
 
+    /// <summary>Streams from a map, to be enforced; empty for none.</summary>
+    public IReadOnlyList<MappedCourse> MappedStreams { get; init; } = [];
+
+    /// <summary>Closed basins to keep as sinks, each named by a point in it.</summary>
+    public IReadOnlyList<BasinPoint> BasinPoints { get; init; } = [];
+
     /// <summary>Existing culverts by crossing id; they are rated instead of sized.</summary>
     public IReadOnlyDictionary<string, ExistingBarrels> Inventory { get; init; } = new Dictionary<string, ExistingBarrels>();
 
@@ -95,6 +101,9 @@ public sealed record StudySettings
 
     /// <summary>Roads whose shoulders follow each other within this distance have one culvert under all, m.</summary>
     public double RoadsTogetherM { get; init; } = 30;
+
+    /// <summary>Mapped streams, depressions and closed basins.</summary>
+    public ConditioningSettings Conditioning { get; init; } = new();
 
     /// <summary>Opening of embankments; its areas and distance between roads are those of the study.</summary>
     public OpeningSettings Openings { get; init; } = new();
@@ -165,6 +174,9 @@ public sealed record StudyResult(
     /// <summary>Openings of embankments.</summary>
     public IReadOnlyList<OpeningResult> Openings { get; init; } = [];
 
+    /// <summary>Mapped streams, cuts and closed basins.</summary>
+    public Conditioning Conditioning { get; init; } = Conditioning.None;
+
     /// <summary>Outlines in the untouched terrain, where openings change the area.</summary>
     public IReadOnlyList<UntouchedWatershed> Untouched { get; init; } = [];
 
@@ -190,6 +202,9 @@ public sealed record StudyResult(
         ResultLayers.Flows.Build(Crossings.SelectMany(c => c.Sheet.Flows.Select(f => (c.CrossingId, f))), units),
         ResultLayers.Options.Build(Crossings.SelectMany(c => c.Options.Select((o, i) => (c.CrossingId, i + 1, o))), units),
         ResultLayers.Ratings.Build(Crossings.SelectMany(c => c.Rating.Select(p => (c.CrossingId, p))), units),
+        TerrainLayers.Breaches.Build(Conditioning.Breaches.Select(b => (b, Terrain.Elevation.Frame)), units),
+        TerrainLayers.MappedStreams.Build(Conditioning.Streams.Select(s => (s, Terrain.Elevation.Frame)), units),
+        TerrainLayers.ClosedBasins.Build(Conditioning.Basins.Select(b => (b, Terrain.Elevation.Frame)), units),
         TerrainLayers.Capacities.Build(Crossings.SelectMany(c => (c.Existing?.Capacities ?? []).Select(k => (c.CrossingId, k))), units),
         TerrainLayers.Changes.Build(Changes, units),
         ResultLayers.Findings.Build(Findings, units),

@@ -1,5 +1,7 @@
 using GeoCulvert.Design.Basis;
 using GeoCulvert.Design.Sizing;
+using GeoCulvert.Design.Terrain;
+using NetTopologySuite.Geometries;
 
 namespace GeoCulvert.Design.Study;
 
@@ -32,6 +34,38 @@ public static class TerrainLayers
             ResultLayers.Real<UntouchedWatershed>("opened_area", QuantityKind.Area, "Area with openings", "With all openings.", w => w.OpenedAreaM2),
         ]);
 
+    /// <summary>Cuts of depressions.</summary>
+    public static LayerDefinition<(Breach Cut, GridFrame Frame)> Breaches { get; } = new(
+        "breaches", "Cuts", "Where a depression of the terrain model was cut open, from the pit down.", LayerGeometry.Line, r => Line(r.Frame, r.Cut.Cells),
+        [
+            ResultLayers.Real<(Breach Cut, GridFrame Frame)>("length", QuantityKind.Length, "Length", "Along the cells.", r => r.Cut.LengthM),
+            ResultLayers.Real<(Breach Cut, GridFrame Frame)>("depth", QuantityKind.Length, "Depth", "Deepest cut.", r => r.Cut.MaxDepthM),
+            ResultLayers.Real<(Breach Cut, GridFrame Frame)>("volume", QuantityKind.Volume, "Volume", "Taken out of the terrain model.", r => r.Cut.VolumeM3),
+        ]);
+
+    /// <summary>Mapped streams as enforced.</summary>
+    public static LayerDefinition<(EnforcedCourse Course, GridFrame Frame)> MappedStreams { get; } = new(
+        "mapped_streams", "Mapped streams", "A stream from the map as it was enforced on the terrain model, drawn downstream.", LayerGeometry.Line, r => Lines(r.Frame, r.Course.Runs),
+        [
+            ResultLayers.Text<(EnforcedCourse Course, GridFrame Frame)>("name", "Name", "As on the map.", r => r.Course.Name),
+            ResultLayers.Real<(EnforcedCourse Course, GridFrame Frame)>("length", QuantityKind.Length, "Length", "Along its cells.", r => r.Course.LengthM),
+            ResultLayers.Real<(EnforcedCourse Course, GridFrame Frame)>("depth", QuantityKind.Length, "Deepest cut", "Deepest cut below the terrain model.", r => r.Course.MaxCutM),
+            ResultLayers.Real<(EnforcedCourse Course, GridFrame Frame)>("volume", QuantityKind.Volume, "Volume", "Taken out of the terrain model along it.", r => r.Course.CutVolumeM3),
+            ResultLayers.Real<(EnforcedCourse Course, GridFrame Frame)>("disagreeing_share", QuantityKind.Share, "In disagreement", "Share of its length away from the terrain model's own streams.", r => r.Course.DisagreeingShare),
+            new("turned", QuantityKind.None, FieldType.Boolean, "Turned", "Whether it runs against the drawing.", r => r.Course.Turned),
+        ]);
+
+    /// <summary>Closed basins kept as sinks.</summary>
+    public static LayerDefinition<(NonContributingArea Basin, GridFrame Frame)> ClosedBasins { get; } = new(
+        "closed_basins", "Closed basins", "A closed basin that was kept: its land drains to no crossing.", LayerGeometry.Point, r => new Point(Centre(r.Frame, r.Basin.Basin.Pool.DeepestCell)),
+        [
+            ResultLayers.Text<(NonContributingArea Basin, GridFrame Frame)>("name", "Name", "Its name.", r => r.Basin.Basin.Name),
+            ResultLayers.Real<(NonContributingArea Basin, GridFrame Frame)>("area", QuantityKind.Area, "Non-contributing area", "Land that drains to it.", r => r.Basin.AreaM2),
+            ResultLayers.Real<(NonContributingArea Basin, GridFrame Frame)>("pool_area", QuantityKind.Area, "Pool area", "Area below its spill level.", r => r.Basin.Basin.Pool.AreaM2),
+            ResultLayers.Real<(NonContributingArea Basin, GridFrame Frame)>("depth", QuantityKind.Length, "Depth", "Greatest depth below its spill level.", r => r.Basin.Basin.Pool.MaxDepthM),
+            ResultLayers.Real<(NonContributingArea Basin, GridFrame Frame)>("volume", QuantityKind.Volume, "Volume", "Below its spill level.", r => r.Basin.Basin.Pool.VolumeM3),
+        ]);
+
     /// <summary>What existing culverts carry.</summary>
     public static LayerDefinition<(string CrossingId, CriterionCapacity Capacity)> Capacities { get; } = new(
         "capacities", "Capacities", "The flow at which an existing culvert just meets a criterion.", LayerGeometry.None, _ => null,
@@ -58,4 +92,14 @@ public static class TerrainLayers
             ResultLayers.Text<CrossingChange>("culvert_before", "Culvert before", "Culvert in the run before.", c => c.Before?.Culvert),
             ResultLayers.Text<CrossingChange>("culvert_after", "Culvert now", "Culvert.", c => c.After?.Culvert),
         ]);
+
+    private static Coordinate Centre(GridFrame frame, int cell) => new(frame.CentreX(cell % frame.Columns), frame.CentreY(cell / frame.Columns));
+
+    private static LineString? Line(GridFrame frame, int[] cells) => cells.Length < 2 ? null : new LineString([.. cells.Select(c => Centre(frame, c))]);
+
+    private static Geometry? Lines(GridFrame frame, IReadOnlyList<int[]> runs)
+    {
+        var lines = runs.Select(r => Line(frame, r)).OfType<LineString>().ToArray();
+        return lines.Length == 0 ? null : lines.Length == 1 ? lines[0] : new MultiLineString(lines);
+    }
 }

@@ -61,7 +61,8 @@ internal static class PitBasins
         var open = new Stack<int>();
         foreach (var first in flat)
         {
-            if (code[first] != 0 || label[first] != 0) continue;
+            // Minus infinity is an outlet inside, a kept sink: no pit.
+            if (code[first] != 0 || label[first] != 0 || float.IsNegativeInfinity(z[first])) continue;
             label[first] = ++pits;
             open.Push(first);
             while (open.TryPop(out var cell))

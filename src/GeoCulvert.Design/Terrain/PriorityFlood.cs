@@ -21,7 +21,7 @@ internal static class PriorityFlood
             {
                 var i = (r * columns) + c;
                 if (float.IsNaN(z[i])) closed[i] = true;
-                else if (EdgeCells.IsEdge(elevation, r, c))
+                else if (EdgeCells.IsEdge(elevation, r, c) || float.IsNegativeInfinity(z[i]))
                 {
                     closed[i] = true;
                     open.Push(z[i], i);
