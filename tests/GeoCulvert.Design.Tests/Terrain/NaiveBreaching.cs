@@ -9,7 +9,7 @@ internal static class NaiveBreaching
     {
         var frame = elevation.Frame;
         var z = (float[])elevation.Cells.Clone();
-        var ways = new List<int[]>();
+        var ways = new List<(int[] Way, List<int> Cut)>();
         var cutCells = new HashSet<int>();
         var left = 0;
         foreach (var pit in Pits(elevation).OrderBy(p => z[p.First()]).ThenBy(p => p.Min()).ToList())
@@ -25,8 +25,8 @@ internal static class NaiveBreaching
             }
 
             if (way.All(c => z[c] <= level)) continue;
-            ways.Add(way);
-            foreach (var c in way.Where(c => z[c] > level))
+            ways.Add((way, way.Where(c => z[c] > level).ToList()));
+            foreach (var c in ways[^1].Cut)
             {
                 z[c] = level;
                 Assert.True(cutCells.Add(c), "a cell is cut twice");
@@ -39,8 +39,7 @@ internal static class NaiveBreaching
             foreach (var c in cutCells) z[c] = Math.Min(elevation.Cells[c], filled[c]);
         }
 
-        ways.RemoveAll(w => w.All(c => z[c] == elevation.Cells[c] || !cutCells.Contains(c)));
-        return (z, ways, left);
+        return (z, [.. ways.Where(w => w.Cut.Any(c => z[c] < elevation.Cells[c])).Select(w => w.Way)], left);
     }
 
     /// <summary>Connected cells of one level, none on the rim, without a lower neighbour.</summary>
