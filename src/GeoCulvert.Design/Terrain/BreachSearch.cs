@@ -12,6 +12,7 @@ internal sealed class BreachSearch(Grid<float> surface, double maxLengthM, doubl
     private readonly OpenCells _open = new();
     private readonly LowestBlocks _blocks = new(surface);
     private readonly List<int> _pool = [];
+    private readonly Stack<int> _under = [];
     private readonly long _longest = Units(maxLengthM);
     private readonly double _deepest = Math.Min(maxDepthM, 1e6);
     private readonly long[] _step = [.. Enumerable.Range(0, 9).Select(k => k == 0 ? 0 : Units(D8.StepLengthM(surface.Frame, (byte)k)))];
@@ -62,21 +63,29 @@ internal sealed class BreachSearch(Grid<float> surface, double maxLengthM, doubl
         var (z, frame) = (surface.Cells, surface.Frame);
         var (spill, under) = (pit.LevelM, 0);
         _pool.Clear();
+        _under.Clear();
         _open.Begin();
-        foreach (var cell in pit.Flat ?? [pit.First]) _open.Reach(cell, Order(pit.LevelM), 0, -1);
-        while (_open.TryTake(out var cell, out _, out _))
+        foreach (var cell in pit.Flat ?? [pit.First])
+        {
+            _open.TryMark(cell, 0, waits: false);
+            _under.Push(cell);
+        }
+
+        // Cells up to the spill level in any order; only those above it wait for their turn by height.
+        while (_under.TryPop(out var cell) || _open.TryTake(out cell, out _, out _))
         {
             if ((_pool.Count & 0xFFFF) == 0) cancel.ThrowIfCancellationRequested();
             if (z[cell] < pit.LevelM) break;
 
-            // Cells come by height, so all that is connected below this one came before it.
+            // All that is connected below this one came before it.
             if (z[cell] > spill) (spill, under) = (z[cell], _pool.Count);
             if (EdgeCells.IsEdge(surface, cell / frame.Columns, cell % frame.Columns)) break;
             _pool.Add(cell);
             for (var k = 1; k <= 8; k++)
             {
                 var n = cell + (D8.RowStep[k] * frame.Columns) + D8.ColumnStep[k];
-                if (!_open.Knows(n)) _open.Reach(n, Order(z[n]), 0, cell);
+                var above = z[n] > spill;
+                if (_open.TryMark(n, Order(z[n]), waits: above) && !above) _under.Push(n);
             }
         }
 

@@ -48,8 +48,20 @@ internal sealed class OpenCells
         if (_reached * 2 > _table.Length) Grow();
     }
 
-    /// <summary>Whether the search came to a cell.</summary>
-    public bool Knows(int cell) => Slot(cell).Turn == _turn;
+    /// <summary>Marks a cell, for searches that come to each once.</summary>
+    /// <param name="cell">The cell.</param>
+    /// <param name="cost">Its cost.</param>
+    /// <param name="waits">Whether it waits its turn.</param>
+    /// <returns>False when it was reached before.</returns>
+    public bool TryMark(int cell, long cost, bool waits)
+    {
+        ref var at = ref Slot(cell);
+        if (at.Turn == _turn) return false;
+        at = new Reached { Turn = _turn, Cell = cell, From = -1, Cost = cost };
+        if (waits) Push((cost, 0, cell));
+        if (++_reached * 2 > _table.Length) Grow();
+        return true;
+    }
 
     /// <summary>The cell before a reached cell; -1 for a start.</summary>
     public int From(int cell) => Slot(cell).From;
