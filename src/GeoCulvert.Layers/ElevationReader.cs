@@ -77,7 +77,7 @@ public static class ElevationReader
         var grid = from.IsProjected && from.IsSameAs(working) && source.GeoTransform is [_, > 0, 0, _, 0, not 0] && options.CellSizeM is null
             ? ReadAsItLies(source, options, working, (float)verticalM, findings)
             : ReadWarped(source, options, from, working, (float)verticalM, findings);
-        InMetres(grid, (float)verticalM);
+        StoredElevations.InMetres(grid.Cells, (float)verticalM);
         var scale = PlaneChoice.Judge(grid.Frame, working, source.Path, options.WorkingCrs is not null, findings);
         return new ElevationModel(grid, new WorkingPlane(working), findings) { Scale = scale, VerticalDatum = crs.VerticalDatum };
     }
@@ -129,17 +129,11 @@ public static class ElevationReader
         return UnitWords.Where(u => u.Word == word).Select(u => (double?)u.InM).FirstOrDefault();
     }
 
-    /// <summary>Brings elevations to metres; what is no number or beyond any number of metres becomes nodata.</summary>
-    private static void InMetres(Grid<float> grid, float verticalM)
-    {
-        foreach (ref var z in grid.Cells.AsSpan()) z = StoredElevations.IsElevation(z) ? z * verticalM : float.NaN;
-    }
-
     /// <summary>Looks at a raster before it is projected: blended with its neighbours, a value that stands for nodata is no longer known.</summary>
     private static void LookAt(RasterSource source, ElevationOptions options, float verticalM, List<Finding> findings)
     {
         var stored = new StoredElevations(source, verticalM);
-        var step = Math.Clamp((1 << 22) / source.Columns, 1, source.Rows);
+        var step = Math.Min(source.Rows, WholeBlocks(source, 1 << 22));
         var rows = new float[checked(step * source.Columns)];
         for (var row = 0; row < source.Rows; row += step)
         {
@@ -198,7 +192,7 @@ public static class ElevationReader
     {
         var grid = NewGrid<float>(frame, source.Path);
         // In bands of rows: GDAL's own buffers stay small and a damaged file is named by its place.
-        var step = Math.Max(1, (1 << 24) / Math.Max(1, frame.Columns));
+        var step = WholeBlocks(source, 1 << 24);
         for (var row = 0; row < frame.Rows; row += step)
         {
             var height = Math.Min(step, frame.Rows - row);
@@ -207,6 +201,9 @@ public static class ElevationReader
 
         return grid;
     }
+
+    /// <summary>Rows of about so many cells, to the end of a block.</summary>
+    private static int WholeBlocks(RasterSource source, int cells) => Math.Max(1, cells / source.Columns / source.BlockRows) * source.BlockRows;
 
     private static Grid<T> NewGrid<T>(GridFrame frame, string path)
         where T : unmanaged

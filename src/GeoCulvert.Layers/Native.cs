@@ -31,6 +31,10 @@ internal static unsafe partial class Native
     [LibraryImport(L)] public static partial int GDALGetRasterDataType(nint band);
     [LibraryImport(L)] public static partial int GDALGetRasterColorInterpretation(nint band);
     [LibraryImport(L)] public static partial nint GDALGetFileList(nint dataset);
+    [LibraryImport(L)] public static partial nint GDALGetDatasetDriver(nint dataset);
+    [LibraryImport(L)] public static partial nint GDALGetDescription(nint target);
+    [LibraryImport(L, StringMarshalling = U)] public static partial nint GDALGetMetadataItem(nint target, string name, string domain);
+    [LibraryImport(L)] public static partial void GDALGetBlockSize(nint band, int* width, int* height);
     [LibraryImport(L)] public static partial void CSLDestroy(nint list);
     [LibraryImport(L)] public static partial double GDALGetRasterNoDataValue(nint band, int* has);
     [LibraryImport(L)] public static partial int GDALSetRasterNoDataValue(nint band, double value);

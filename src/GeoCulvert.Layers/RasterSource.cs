@@ -11,6 +11,7 @@ public sealed unsafe class RasterSource : IDisposable
     private readonly DatasetHandle _dataset;
     private readonly IReadOnlyList<RasterSource> _parts;
     private readonly nint _band;
+    private readonly Lazy<DeflatedTiles?> _tiles;
 
     /// <param name="path">Path as given.</param>
     /// <param name="dataset">Open dataset, owned from here on.</param>
@@ -37,6 +38,10 @@ public sealed unsafe class RasterSource : IDisposable
         Scale = has != 0 && scale != 0 ? scale : 1;
         var offset = Native.GDALGetRasterOffset(_band, &has);
         Offset = has != 0 ? offset : 0;
+        int width, height;
+        Native.GDALGetBlockSize(_band, &width, &height);
+        BlockRows = Math.Max(1, height);
+        _tiles = new(() => DeflatedTiles.Of(this, _band));
         Gdal.Clear();
     }
 
@@ -72,6 +77,12 @@ public sealed unsafe class RasterSource : IDisposable
 
     /// <summary>Added to stored values after the factor.</summary>
     public double Offset { get; }
+
+    /// <summary>Whether whole blocks are read past GDAL (deflate-compressed float32 GeoTIFF on a disk).</summary>
+    public bool ReadsBlocksItself => _tiles.Value is not null;
+
+    /// <summary>Rows of a block of the file: windows that begin and end at blocks are read fastest.</summary>
+    public int BlockRows { get; }
 
     /// <summary>Number of bands; the first is read.</summary>
     public int Bands { get; }
@@ -164,9 +175,13 @@ public sealed unsafe class RasterSource : IDisposable
     {
         if (values.Length < (long)width * height) throw new ArgumentException("The buffer is too small.", nameof(values));
         Gdal.Clear();
-        fixed (float* p = values)
+        var isWhole = width == Columns && height >= BlockRows && row % BlockRows == 0 && (height % BlockRows == 0 || row + height == Rows);
+        if (!isWhole || _tiles.Value?.TryRead(row, height, values) != true)
         {
-            if (Native.GDALRasterIO(_band, 0, column, row, width, height, p, width, height, Float32, 0, 0) != 0) throw Damaged(column, row);
+            fixed (float* p = values)
+            {
+                if (Native.GDALRasterIO(_band, 0, column, row, width, height, p, width, height, Float32, 0, 0) != 0) throw Damaged(column, row);
+            }
         }
 
         var used = values[..(width * height)];
@@ -197,6 +212,7 @@ public sealed unsafe class RasterSource : IDisposable
     public void Dispose()
     {
         Crs?.Dispose();
+        if (_tiles.IsValueCreated) _tiles.Value?.Dispose();
         _dataset.Dispose();
         foreach (var part in _parts) part.Dispose();
     }
