@@ -5,6 +5,7 @@ using GeoCulvert.Design.Terrain;
 // Usage: GeoCulvert.Benchmarks sizing [CROSSINGS]          sizes random crossings beside a plain scan.
 //        GeoCulvert.Benchmarks survey [SIDE [OUTLETS]]     times the survey of watersheds.
 //        GeoCulvert.Benchmarks conditioning [SIDE [TURNS]] times cuts, depressions and mapped streams.
+//        GeoCulvert.Benchmarks reading FILE [TURNS]        times the reading of a raster beside GDAL.
 //        GeoCulvert.Benchmarks [SIDE [TURNS]]              prints nanoseconds a cell (best of the turns) for terrain of SIDE x SIDE cells.
 if (args is ["sizing", ..])
 {
@@ -20,6 +21,13 @@ if (args is ["survey", ..])
 
 var conditioning = args is ["conditioning", ..];
 if (conditioning) args = args[1..];
+
+if (args is ["reading", var file, ..])
+{
+    Reading.Report(file, args.Length > 2 ? int.Parse(args[2]) : 3);
+    return;
+}
+
 var side = args.Length > 0 ? int.Parse(args[0]) : 2000;
 var turns = args.Length > 1 ? int.Parse(args[1]) : 3;
 if (conditioning)
