@@ -32,12 +32,13 @@ internal static class RasterDoubts
         double west = g[0], north = g[3], east = g[0] + (g[1] * source.Columns) + (g[2] * source.Rows), south = g[3] + (g[4] * source.Columns) + (g[5] * source.Rows);
         double farX = Math.Max(Math.Abs(west), Math.Abs(east)), farY = Math.Max(Math.Abs(north), Math.Abs(south));
         var corner = string.Create(CultureInfo.InvariantCulture, $"x {Math.Min(west, east):0.#####} to {Math.Max(west, east):0.#####}, y {Math.Min(south, north):0.#####} to {Math.Max(south, north):0.#####}");
+        var where = source.Crs is null ? "[terrain] crs in the project file that" : "a file whose coordinate system";
         double cell = Math.Max(Math.Abs(g[1]), Math.Abs(g[2]));
 
         // Degrees lie within 360 and 90, and a terrain model's cells are small parts of one (own rule: 0.02 degrees are two kilometres).
         if (crs.IsProjected && farX <= 360 && farY <= 90 && cell <= 0.02)
-            yield return new InputProblem(source.Path, $"{corner} in cells of {cell.ToString("0.########", CultureInfo.InvariantCulture)}, which look like degrees, under {crs.Label}, whose unit is the {crs.LinearUnitName}", "a file whose coordinate system fits its coordinates, for example EPSG:4326 for degrees");
+            yield return new InputProblem(source.Path, $"{corner} in cells of {cell.ToString("0.########", CultureInfo.InvariantCulture)}, which look like degrees, under {crs.Label}, whose unit is the {crs.LinearUnitName}", $"{where} fits its coordinates, for example EPSG:4326 for degrees");
         if (crs.IsGeographic && (farX > 361 || farY > 91))
-            yield return new InputProblem(source.Path, $"{corner}, which are no degrees, under {crs.Label}", "a file whose coordinate system fits its coordinates: a projected one");
+            yield return new InputProblem(source.Path, $"{corner}, which are no degrees, under {crs.Label}", $"{where} fits its coordinates: a projected one");
     }
 }

@@ -31,6 +31,7 @@ public sealed unsafe class RasterSource : IDisposable
         int has;
         var nodata = Native.GDALGetRasterNoDataValue(_band, &has);
         NoData = has != 0 ? nodata : null;
+        TaggedNoData = has != 0 ? [nodata] : [];
         UnitName = Native.Text(Native.GDALGetRasterUnitType(_band));
         DataType = Native.GDALGetRasterDataType(_band);
         ColourInterpretation = Native.GDALGetRasterColorInterpretation(_band);
@@ -65,6 +66,9 @@ public sealed unsafe class RasterSource : IDisposable
 
     /// <summary>Tagged nodata value, or null.</summary>
     public double? NoData { get; }
+
+    /// <summary>Nodata values as the file, or each of the tiles, tags them.</summary>
+    public IReadOnlyList<double> TaggedNoData { get; internal init; }
 
     /// <summary>Unit of the values as the file says it, or "".</summary>
     public string UnitName { get; }

@@ -24,10 +24,11 @@ internal static unsafe class RasterTiles
             var problems = open.SelectMany(t => Differences(t, open[0])).ToList();
             if (problems.Count > 0) throw new InputException(problems);
             var findings = TileDoubts.Of(open, statedNoData);
+            double[] tagged = [.. open.SelectMany(t => t.TaggedNoData).Distinct()];
             var type = open.All(t => t.DataType is >= 1 and <= Int32 and not 4) ? Int32 : open.Any(t => t.DataType is 4 or Float64) ? Float64 : Float32;
             var alike = open.Select(t => Typed(t, type, statedNoData)).ToList();
             open.AddRange(alike); // a tile in its new type reads from the one as it was
-            return new RasterSource(shown, Joined(alike, type), [.. Enumerable.Reverse(open)]) { Findings = findings };
+            return new RasterSource(shown, Joined(alike, type), [.. Enumerable.Reverse(open)]) { Findings = findings, TaggedNoData = tagged };
         }
         catch
         {

@@ -26,7 +26,7 @@ internal sealed partial class StudyLoader
         {
             using var source = RasterSource.OpenMany([.. shown.Select(_project.Full)], options.NoData);
             var (crs, _) = ElevationReader.Check(source, options, []);
-            foreach (var file in source.Files) _files.Add(InputFacts.Of(Shown(file, shown), file, "terrain", crs.Label) with { NoData = NoDataText(source.NoData, options.NoData) });
+            foreach (var file in source.Files) _files.Add(InputFacts.Of(Shown(file, shown), file, "terrain", crs.Label) with { NoData = NoDataText(source.TaggedNoData, options.NoData) });
             var model = ElevationReader.Read(source, options);
             _findings.AddRange(model.Findings);
             _terrainDatum = model.VerticalDatum;
@@ -51,8 +51,8 @@ internal sealed partial class StudyLoader
     private string Shown(string file, IReadOnlyList<string> named) =>
         named.FirstOrDefault(n => _project.Full(n) == file) ?? (file.StartsWith("/vsi", StringComparison.Ordinal) ? file : Path.GetRelativePath(_project.Folder, file));
 
-    private static string NoDataText(double? tagged, double? stated) => string.Join(
-        ", ", new[] { tagged is { } t ? $"{t:R} (file)" : null, stated is { } s ? $"{s:R} (project)" : null }.OfType<string>());
+    private static string NoDataText(IReadOnlyList<double> tagged, double? stated) => string.Join(
+        ", ", tagged.Select(t => $"{t:R} (file)").Concat(stated is { } s ? [$"{s:R} (project)"] : []));
 
     private List<StudyRoad> Roads(WorkingPlane plane, GridFrame? frame)
     {
