@@ -32,13 +32,15 @@ public static class RootFinding
             var middle = Math.Sqrt(low * high);
             var atMiddle = f(middle);
             if (atMiddle == 0) return middle;
-            if (Math.Sign(atMiddle) == Math.Sign(atLow)) low = middle;
-            else high = middle;
+            if (Math.Sign(atMiddle) == Math.Sign(atLow)) (low, atLow) = (middle, atMiddle);
+            else (high, atHigh) = (middle, atMiddle);
         }
 
         var scale = Scale / Math.Max(Math.Abs(atLow), Math.Abs(atHigh));
         var accuracy = RelativeTolerance * Math.Max(Math.Abs(low), Math.Abs(high));
-        return Brent.TryFindRoot(x => scale * f(x), low, high, accuracy, 200, out var root)
+        // The library asks for the ends again: they are known.
+        double Scaled(double x) => scale * (x == low ? atLow : x == high ? atHigh : f(x));
+        return Brent.TryFindRoot(Scaled, low, high, accuracy, 200, out var root)
             ? root
             : throw new InvalidOperationException($"Root search on [{low:R}, {high:R}] did not converge.");
     }

@@ -69,6 +69,14 @@ public sealed record CulvertRating
     /// <summary>The handbook's shorthand for outlet control.</summary>
     public required ShorthandHeadwater Shorthand { get; init; }
 
+    /// <summary>
+    /// Whether the level lies in a jump of the barrels' own headwater, where they pass from free to full flow and carry the same at any level between.
+    /// </summary>
+    public bool IsBetweenFreeAndFull { get; init; }
+
+    /// <summary>What the inlet and the profile give for the barrel flow itself, m above the inlet invert; differs from <see cref="HeadwaterM"/> only in such a jump.</summary>
+    public double OwnHeadwaterM => BarrelFlowM3PerS > 0 ? Math.Max(Inlet.HeadwaterM, Profile.HeadwaterM) : HeadwaterM;
+
     /// <summary>Velocity at the outlet, m/s.</summary>
     public required double OutletVelocityMPerS { get; init; }
 
@@ -85,11 +93,11 @@ public sealed record CulvertRating
 /// <summary>Rates culverts: headwater for a flow.</summary>
 public static class CulvertHydraulics
 {
+    /// <summary>Difference between the shared level and the barrels' own headwater, over the rise, above which the headwater is taken to jump there.</summary>
+    internal const double JumpShare = 1e-6;
+
     /// <summary>Share by which the two controls may differ and still be near a tie.</summary>
     public const double TieShare = 0.02;
-
-    // A barrel that carries less than this share beside a road is taken as empty.
-    private const double LeastBarrelShare = 1e-9;
 
     /// <summary>Headwater and all that belongs to it for one total flow.</summary>
     /// <param name="site">Culvert, tailwater and road.</param>
@@ -99,38 +107,14 @@ public static class CulvertHydraulics
         ArgumentNullException.ThrowIfNull(site);
         ArgumentOutOfRangeException.ThrowIfNegative(flowM3PerS);
         var tailwater = site.Tailwater.ElevationM(flowM3PerS);
-        var barrelFlow = flowM3PerS;
-        var still = Math.Max(site.Barrels.InletElevationM, tailwater);
-        if (site.Road is { } road && flowM3PerS > 0 && HeadwaterElevationM(site, flowM3PerS, tailwater) > road.LowestM)
-        {
-            double Surplus(double through) =>
-                through + RoadOvertopping.FlowM3PerS(road, HeadwaterElevationM(site, through, tailwater), tailwater) - flowM3PerS;
-            var least = LeastBarrelShare * flowM3PerS;
-            // Barrels mostly carry a fair share: come down to it by quarters, so that the search begins close.
-            double high = flowM3PerS, low = flowM3PerS / 4;
-            while (low > least && Surplus(low) >= 0) (high, low) = (low, low / 4);
-            if (low > least || Surplus(low = least) < 0)
-            {
-                barrelFlow = RootFinding.Bracketed(Surplus, low, high);
-            }
-            else
-            {
-                // A road below the inlet invert, or drowned from below, takes all the water: the weir alone sets the level, never below the tailwater.
-                barrelFlow = 0;
-                var level = RootFinding.Bracketed(
-                    z => RoadOvertopping.FlowM3PerS(road, z, tailwater) - flowM3PerS, road.LowestM, HeadwaterElevationM(site, flowM3PerS, tailwater));
-                still = Math.Max(level, tailwater);
-            }
-        }
-
-        var rating = Detail(site, flowM3PerS, barrelFlow, tailwater, still - site.Barrels.InletElevationM);
+        var split = SharedHeadwater.Divide([site.Barrels], site.Road, flowM3PerS, tailwater);
+        var rating = Detail(site, flowM3PerS, split.FlowsM3PerS[0], tailwater, split.LevelM);
         return rating with { Findings = Doubts(rating) };
     }
 
     /// <summary>Headwater elevation when a flow goes through the barrels, m.</summary>
-    internal static double HeadwaterElevationM(CulvertSite site, double barrelFlowM3PerS, double tailwaterM)
+    internal static double HeadwaterElevationM(CulvertBarrels b, double barrelFlowM3PerS, double tailwaterM)
     {
-        var b = site.Barrels;
         var flow = barrelFlowM3PerS / b.Count;
         if (flow <= 0) return Math.Max(b.InletElevationM, tailwaterM);
         var inlet = InletControl.Headwater(b.Section, b.Inlet, flow, b.SlopeMPerM).HeadwaterM;
@@ -138,11 +122,12 @@ public static class CulvertHydraulics
         return b.InletElevationM + Math.Max(inlet, outlet);
     }
 
-    private static CulvertRating Detail(CulvertSite site, double total, double barrelFlow, double tailwater, double still)
+    /// <summary>All that belongs to a flow through the barrels under a headwater.</summary>
+    internal static CulvertRating Detail(CulvertSite site, double total, double barrelFlow, double tailwater, double level)
     {
         var b = site.Barrels;
         var flow = barrelFlow / b.Count;
-        var depth = tailwater - b.OutletElevationM;
+        var (still, depth) = (level - b.InletElevationM, tailwater - b.OutletElevationM);
         if (flow <= 0)
         {
             return new CulvertRating
@@ -156,13 +141,17 @@ public static class CulvertHydraulics
 
         var inlet = InletControl.Headwater(b.Section, b.Inlet, flow, b.SlopeMPerM);
         var profile = BarrelFlow.Profile(b.Section, flow, b.RoughnessN, b.EntranceLossCoefficient, b.LengthM, b.SlopeMPerM, depth);
+        // The controlling headwater is the shared level itself: equal to the group's own within the width of the search, or, where the barrels pass from
+        // free to full flow and their headwater jumps, the level between that the road or the other groups set.
+        var isInlet = inlet.HeadwaterM >= profile.HeadwaterM && Math.Abs(inlet.HeadwaterM - still) <= JumpShare * b.Section.RiseM;
         return new CulvertRating
         {
             FlowM3PerS = total,
             BarrelFlowM3PerS = barrelFlow,
             RoadFlowM3PerS = total - barrelFlow,
-            InletControlHeadwaterM = inlet.HeadwaterM,
-            OutletControlHeadwaterM = profile.HeadwaterM,
+            InletControlHeadwaterM = isInlet ? still : Math.Min(inlet.HeadwaterM, still),
+            OutletControlHeadwaterM = isInlet ? Math.Min(profile.HeadwaterM, still) : still,
+            IsBetweenFreeAndFull = Math.Abs(Math.Max(inlet.HeadwaterM, profile.HeadwaterM) - still) > JumpShare * b.Section.RiseM,
             TailwaterElevationM = tailwater,
             Profile = profile,
             Inlet = inlet,
@@ -174,7 +163,8 @@ public static class CulvertHydraulics
         };
     }
 
-    private static List<Finding> Doubts(CulvertRating r)
+    /// <summary>Doubts about a rating.</summary>
+    internal static List<Finding> Doubts(CulvertRating r)
     {
         var findings = new List<Finding>();
         var b = r.Site.Barrels;
@@ -186,6 +176,8 @@ public static class CulvertHydraulics
             findings.Add(HydraulicsFindings.RoadOvertopped.With($"{r.RoadFlowM3PerS:G3} of {r.FlowM3PerS:G4} m3/s, {r.HeadwaterElevationM - r.Site.Road!.LowestM:0.00} m deep at the lowest point", r.RoadFlowM3PerS, 0));
         if (r.Control == "outlet" && !r.Shorthand.IsInRange)
             findings.Add(HydraulicsFindings.ShorthandOutOfRange.With($"shorthand {r.Shorthand.HeadwaterM:0.00} m, 0.75 D = {OutletControlShorthand.LeastRatio * b.Section.RiseM:0.00} m"));
+        if (r.IsBetweenFreeAndFull)
+            findings.Add(HydraulicsFindings.BetweenFreeAndFull.With($"{r.HeadwaterM:0.00} m at {r.BarrelFlowM3PerS:G4} m3/s through the barrels, which alone would stand at {r.OwnHeadwaterM:0.00} m just on one side"));
         if (b.SlopeMPerM < 0) findings.Add(HydraulicsFindings.AdverseBarrel.With($"slope {b.SlopeMPerM:0.0000} m/m", b.SlopeMPerM, 0));
         if (b.Inlet.IsThroat) findings.Add(HydraulicsFindings.ThroatOnly.With(b.Inlet.Id));
         return findings;

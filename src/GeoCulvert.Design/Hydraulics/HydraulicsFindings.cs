@@ -28,4 +28,13 @@ public static class HydraulicsFindings
     /// <summary>Tapered inlet.</summary>
     public static readonly FindingCode ThroatOnly = new(
         "throat-control-only", Severity.Warning, "Inlet control was computed at the throat of a tapered inlet; its face was not checked.", "Check the face of the inlet with its own dimensions.");
+
+    /// <summary>A group without water.</summary>
+    public static readonly FindingCode GroupDry = new(
+        "barrel-group-dry", Severity.Note, "A group of barrels carries nothing at this flow.", "Nothing, if it is a relief barrel; else check its inverts.");
+
+    /// <summary>Between free and full flow.</summary>
+    public static readonly FindingCode BetweenFreeAndFull = new(
+        "barrel-between-free-and-full", Severity.Warning, "The headwater lies where the barrel passes from free to full flow and its own headwater jumps.",
+        "Expect the level to swing between the two; a larger or shorter barrel avoids it.");
 }

@@ -48,6 +48,76 @@ public class RatingInvariantTests
         iter: 3000);
 
     [Fact]
+    public void TheRoadFlowIsThatOfTheReportedLevel()
+    {
+        var overtopped = 0;
+        Gen.Select(Site, Gen.Double[0.02, 6]).Sample(
+            (site, x) =>
+            {
+                var r = CulvertHydraulics.Rate(site, x * site.Barrels.AreaM2 * Math.Sqrt(site.Barrels.Section.RiseM) / InletControl.Ku);
+                // At the very level of the tailwater the weir is drowned and takes what is left.
+                if (r.RoadFlowM3PerS <= 0 || r.HeadwaterElevationM - r.TailwaterElevationM < 1e-6) return true;
+                Interlocked.Increment(ref overtopped);
+                return Math.Abs(RoadOvertopping.FlowM3PerS(site.Road!, r.HeadwaterElevationM, r.TailwaterElevationM) - r.RoadFlowM3PerS) < 1e-7 * r.FlowM3PerS;
+            },
+            iter: 6000);
+        Assert.True(overtopped > 500, $"{overtopped} overtopped");
+    }
+
+    [Fact]
+    public void WhereTheHeadwaterJumpsTheRoadSetsTheLevelBetween()
+    {
+        // A long wide box on a fair slope: as it fills, the wetted crown takes away a part of its conveyance, so that its own headwater jumps by metres.
+        var barrels = new CulvertBarrels(new BoxSection(2, 0.5), 1, InletCatalogue.Find("hds5-8-1", "test"), 0.03, 0.4, 150, 100, 97);
+        var site = new CulvertSite(barrels, new FixedTailwater(97), RoadCrest.Level(101.2, 40, 9, RoadSurface.Paved));
+        var between = Enumerable.Range(1, 300).Select(i => CulvertHydraulics.Rate(site, 0.02 * i)).Where(r => r.IsBetweenFreeAndFull).ToList();
+        Assert.NotEmpty(between);
+        foreach (var r in between)
+        {
+            var alone = site with { Road = null };
+            Assert.InRange(
+                r.HeadwaterElevationM,
+                CulvertHydraulics.Rate(alone, r.BarrelFlowM3PerS * (1 - 1e-7)).HeadwaterElevationM - 1e-6,
+                CulvertHydraulics.Rate(alone, r.BarrelFlowM3PerS * (1 + 1e-7)).HeadwaterElevationM + 1e-6);
+            Assert.Equal(r.RoadFlowM3PerS, RoadOvertopping.FlowM3PerS(site.Road!, r.HeadwaterElevationM, 97), 1e-7);
+            Assert.Contains(r.Findings, f => f.Code == "barrel-between-free-and-full");
+        }
+    }
+
+    [Fact]
+    public void TheFlowOverASlopingRoadIsTheIntegralOfItsHeads()
+    {
+        // Midpoint sum over 20 000 strips of the published equation, strip by strip.
+        var crest = new RoadCrest([(0, 12), (25, 10), (40, 10.2), (70, 11.5)], 9, RoadSurface.Gravel);
+        foreach (var (level, tailwater) in new[] { (10.15, 9.0), (10.8, 9.0), (11.2, 10.9), (12.6, 12.3) })
+        {
+            var sum = 0.0;
+            for (var i = 0; i < 20000; i++)
+            {
+                var s = 70 * (i + 0.5) / 20000;
+                var z = s < 25 ? 12 - (0.08 * s) : s < 40 ? 10 + (0.2 * (s - 25) / 15) : 10.2 + (1.3 * (s - 40) / 30);
+                var head = level - z;
+                if (head <= 0) continue;
+                var kt = RoadOvertopping.SubmergenceFactor((tailwater - z) / head, RoadSurface.Gravel);
+                sum += kt * 0.552 * RoadOvertopping.CoefficientUs(head, 9, RoadSurface.Gravel) * 70 / 20000 * Math.Pow(head, 1.5);
+            }
+
+            Assert.Equal(sum, RoadOvertopping.FlowM3PerS(crest, level, tailwater), 0.006 * sum);
+        }
+    }
+
+    [Fact]
+    public void TheLevelOverTheRoadIsTheInverseOfItsFlow() => Gen.Select(Gen.Double[-12, 2], Gen.Double[8, 11]).Sample(
+        (exponent, tailwater) =>
+        {
+            var crest = new RoadCrest([(0, 12), (20, 10), (40, 10), (60, 12)], 9, RoadSurface.Paved);
+            var flow = Math.Pow(10, exponent);
+            var level = RoadOvertopping.LevelM(crest, flow, tailwater);
+            return level >= Math.Max(10, tailwater) && Math.Abs(RoadOvertopping.FlowM3PerS(crest, level, tailwater) - flow) < 1e-9 + (1e-5 * flow);
+        },
+        iter: 500);
+
+    [Fact]
     public void HeadwaterRisesThroughTheDrowningOfASteepInlet()
     {
         // Tailwater that reaches up to the inlet and slopes about and above the critical one: where depth at the inlet changes fastest with flow.
