@@ -37,4 +37,30 @@ public static class HydraulicsFindings
     public static readonly FindingCode BetweenFreeAndFull = new(
         "barrel-between-free-and-full", Severity.Warning, "The headwater lies where the barrel passes from free to full flow and its own headwater jumps.",
         "Expect the level to swing between the two; a larger or shorter barrel avoids it.");
+
+    /// <summary>Apron of another shape.</summary>
+    public static readonly FindingCode ApronShape = new(
+        "apron-shape-assumed", Severity.Note, "The riprap equation is published for circular culverts; the barrel was taken as the circle of the same area.",
+        "Check the stone size by another method for large boxes.");
+
+    /// <summary>Apron of a large culvert.</summary>
+    public static readonly FindingCode ApronLarge = new(
+        "apron-large-culvert", Severity.Note, "The culvert is larger than those the published aprons are meant for.", "Consider a riprap basin or another dissipator.");
+
+    /// <summary>No class large enough.</summary>
+    public static readonly FindingCode ApronBeyondClasses = new(
+        "apron-beyond-classes", Severity.Warning, "The outlet asks for stones larger than the largest class of riprap, so no apron is given.",
+        "Design an energy dissipator, or slow the flow by a larger, flatter or rougher barrel.");
+
+    /// <summary>Not self-cleansing.</summary>
+    public static readonly FindingCode SiltsUp = new(
+        "barrel-not-self-cleansing", Severity.Note, "At the small flow the barrel does not reach what keeps it clean.", "Expect silt; steepen or narrow the barrel, or plan for cleaning.");
+
+    /// <summary>Blockage.</summary>
+    public static readonly FindingCode Blocked = new(
+        "barrel-blocked-case", Severity.Note, "Headwater was also computed with a share of the barrels blocked.", "Hold it against the road level where debris or silt is expected.");
+
+    /// <summary>Control depends on tailwater.</summary>
+    public static readonly FindingCode TailwaterMovesControl = new(
+        "tailwater-moves-control", Severity.Warning, "Between the low and the high tailwater the control of the culvert changes.", "Find out the tailwater by survey or a water-surface computation of the stream.");
 }
