@@ -10,6 +10,12 @@ public interface ITailwater
 
     /// <summary>Tailwater elevation for the total flow, m.</summary>
     double ElevationM(double flowM3PerS);
+
+    /// <summary>Mean velocity in the channel below for the total flow, m/s; null where it is not known.</summary>
+    double? VelocityMPerS(double flowM3PerS) => null;
+
+    /// <summary>The calculation for one flow, line by line; empty where there is none.</summary>
+    IReadOnlyList<Step> Steps(double flowM3PerS) => [];
 }
 
 /// <summary>The same level for every flow.</summary>
@@ -68,7 +74,10 @@ public sealed record NormalDepthTailwater(TrapezoidSection Section, double Rough
     /// <inheritdoc/>
     public double ElevationM(double flowM3PerS) => BedElevationM + OpenChannelFlow.NormalDepthM(Section, flowM3PerS, RoughnessN, SlopeMPerM)!.Value;
 
-    /// <summary>The calculation for one flow, line by line.</summary>
+    /// <inheritdoc/>
+    public double? VelocityMPerS(double flowM3PerS) => flowM3PerS <= 0 ? 0 : flowM3PerS / Section.AreaM2(ElevationM(flowM3PerS) - BedElevationM);
+
+    /// <inheritdoc/>
     public IReadOnlyList<Step> Steps(double flowM3PerS)
     {
         var depth = ElevationM(flowM3PerS) - BedElevationM;
@@ -82,6 +91,80 @@ public sealed record NormalDepthTailwater(TrapezoidSection Section, double Rough
             new("channel_slope", SlopeMPerM, "m/m"),
             new("tailwater_depth_m", depth, "m", $"Q = A R^(2/3) S^(1/2) / n: {flowM3PerS:G4} = {area:G4} x ({area:G4}/{perimeter:G4})^(2/3) x {SlopeMPerM:G4}^(1/2) / {RoughnessN:G3}", source),
             new("tailwater_elevation_m", BedElevationM + depth, "m", $"{BedElevationM:0.00} + {depth:0.00}"),
+        ];
+    }
+}
+
+/// <summary>Normal depth in a natural cross-section some way below the outlet, its surface carried up to the outlet parallel to the bed.</summary>
+/// <param name="Section">Cross-section.</param>
+/// <param name="SlopeMPerM">Bed slope, above 0.</param>
+/// <param name="DistanceM">Distance of the section below the outlet, m.</param>
+public sealed record CrossSectionTailwater(ChannelCrossSection Section, double SlopeMPerM, double DistanceM) : ITailwater
+{
+    /// <inheritdoc/>
+    public string Description => "normal depth in a cross-section of the terrain";
+
+    /// <summary>Bed at the outlet, m.</summary>
+    public double BedElevationM => Section.BedM + (SlopeMPerM * DistanceM);
+
+    /// <inheritdoc/>
+    public double ElevationM(double flowM3PerS) => LevelAtSectionM(flowM3PerS) + (SlopeMPerM * DistanceM);
+
+    /// <summary>Level at the section itself, m.</summary>
+    public double LevelAtSectionM(double flowM3PerS) => Section.LevelForConveyanceM(flowM3PerS / Math.Sqrt(SlopeMPerM));
+
+    /// <inheritdoc/>
+    public double? VelocityMPerS(double flowM3PerS) => flowM3PerS <= 0 ? 0 : flowM3PerS / Section.At(LevelAtSectionM(flowM3PerS)).AreaM2;
+
+    /// <inheritdoc/>
+    public IReadOnlyList<Step> Steps(double flowM3PerS)
+    {
+        var level = LevelAtSectionM(flowM3PerS);
+        var at = Section.At(level);
+        const string source = "Manning's equation, subdivided conveyance (Chow 1959, sec. 6-5)";
+        return
+        [
+            new("section_distance_m", DistanceM, "m", "below the outlet"),
+            new("section_points", Section.Points.Count, ""),
+            new("section_bed_m", Section.BedM, "m"),
+            new("channel_width_m", Section.RightBankM - Section.LeftBankM, "m"),
+            new("channel_roughness", Section.ChannelN, ""),
+            new("overbank_roughness", Section.OverbankN, ""),
+            new("channel_slope", SlopeMPerM, "m/m"),
+            new("section_level_m", level, "m", $"Q = K S^(1/2): {flowM3PerS:G4} = {at.ConveyanceM3PerS:G4} x {SlopeMPerM:G4}^(1/2), area {at.AreaM2:G4} m2, width {at.TopWidthM:0.0} m", source),
+            new("tailwater_depth_m", level - Section.BedM, "m"),
+            new("tailwater_elevation_m", level + (SlopeMPerM * DistanceM), "m", $"{level:0.00} + {SlopeMPerM:G4} x {DistanceM:0.0}"),
+        ];
+    }
+}
+
+/// <summary>The tailwater of the channel, never below the pool of the crossing next downstream.</summary>
+/// <param name="Channel">Tailwater without the pool.</param>
+/// <param name="Pool">Headwater of the crossing downstream, by the flow of this one.</param>
+/// <param name="DownstreamId">The crossing downstream.</param>
+public sealed record PoolTailwater(ITailwater Channel, RatingTailwater Pool, string DownstreamId) : ITailwater
+{
+    /// <inheritdoc/>
+    public string Description => $"{Channel.Description}, not below the pool of {DownstreamId}";
+
+    /// <inheritdoc/>
+    public double ElevationM(double flowM3PerS) => Math.Max(Channel.ElevationM(flowM3PerS), Pool.ElevationM(flowM3PerS));
+
+    /// <summary>Whether the pool sets the level at a flow.</summary>
+    public bool IsPool(double flowM3PerS) => Pool.ElevationM(flowM3PerS) > Channel.ElevationM(flowM3PerS);
+
+    /// <inheritdoc/>
+    public double? VelocityMPerS(double flowM3PerS) => IsPool(flowM3PerS) ? null : Channel.VelocityMPerS(flowM3PerS);
+
+    /// <inheritdoc/>
+    public IReadOnlyList<Step> Steps(double flowM3PerS)
+    {
+        var (channel, pool) = (Channel.ElevationM(flowM3PerS), Pool.ElevationM(flowM3PerS));
+        return
+        [
+            .. Channel.Steps(flowM3PerS),
+            new("downstream_pool_m", pool, "m", $"headwater of {DownstreamId}"),
+            new("tailwater_elevation_m", Math.Max(channel, pool), "m", $"the higher of {channel:0.00} (channel) and {pool:0.00} (pool)"),
         ];
     }
 }
