@@ -3,6 +3,7 @@ using GeoCulvert.Benchmarks;
 using GeoCulvert.Design.Terrain;
 
 // Usage: GeoCulvert.Benchmarks sizing [CROSSINGS]          sizes random crossings beside a plain scan.
+//        GeoCulvert.Benchmarks rating [CULVERTS]           times ratings.
 //        GeoCulvert.Benchmarks survey [SIDE [OUTLETS]]     times the survey of watersheds.
 //        GeoCulvert.Benchmarks conditioning [SIDE [TURNS]] times cuts, depressions and mapped streams.
 //        GeoCulvert.Benchmarks reading FILE [TURNS]        times the reading of a raster beside GDAL.
@@ -25,6 +26,12 @@ if (conditioning) args = args[1..];
 if (args is ["reading", var file, ..])
 {
     Reading.Report(file, args.Length > 2 ? int.Parse(args[2]) : 3);
+    return;
+}
+
+if (args is ["rating", ..])
+{
+    RatingBenchmark.Run(args.Length > 1 ? int.Parse(args[1]) : 4000);
     return;
 }
 

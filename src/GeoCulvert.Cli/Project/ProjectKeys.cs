@@ -156,19 +156,23 @@ internal static class ProjectKeys
         new("criteria", "largest_outlet_velocity", KeyKind.Quantity, null, "at the design flood; default: no limit, high velocity is a finding") { Dimension = "velocity", Least = 0.1 },
         Length("criteria", "largest_overtopping_depth", null, "over the lowest road point at the check flood; default: no limit, overtopping is a finding", 0),
 
-        new("tailwater", "method", KeyKind.Choice, "\"normal-depth\"", "normal depth in a channel, or a fixed elevation") { Words = ["normal-depth", "fixed"] },
+        new("tailwater", "method", KeyKind.Choice, "\"channel-from-dem\"", "normal depth in a cross-section of the terrain below the outlet, or in a trapezoid; a fixed elevation; or a rating table") { Words = ["channel-from-dem", "normal-depth", "fixed", "rating"] },
         Length("tailwater", "bottom_width", null, "channel bottom width; default: from the drainage area, and a finding says so", 0),
         new("tailwater", "side_slope", KeyKind.Number, "2.0", "channel side slope, horizontal per one vertical") { Least = 0, Most = 20 },
         new("tailwater", "roughness", KeyKind.Number, "0.04", "Manning n of the channel; natural streams on plains 0.03-0.05 (Chow 1959, table 5-6)") { Least = 0.01, Most = 0.3 },
         new("tailwater", "slope", KeyKind.Quantity, null, "bed slope; default: from the terrain below the outlet") { Dimension = "slope", Least = 1e-6, Most = 1 },
         Length("tailwater", "elevation", null, "for method \"fixed\"", -500),
+        new("tailwater", "rating", KeyKind.Path, null, "for method \"rating\": CSV with flow_m3_s or flow_cfs and elevation_m, elevation_ft, or depth_m, depth_ft above the outlet invert"),
+        new("tailwater", "overbank_roughness", KeyKind.Number, "0.08", "Manning n beside the channel in a cross-section; brush on flood plains 0.05-0.1 (Chow 1959, table 5-6)") { Least = 0.01, Most = 0.5 },
+        Length("tailwater", "section_distance", "\"20 m\"", "distance of the cross-section below the outlet; at least two cells", 1),
+        new("tailwater", "low_depth_factor", KeyKind.Number, null, "depth of a low tailwater over the expected one; with high_depth_factor both headwaters are reported") { Least = 0, Most = 1 },
+        new("tailwater", "high_depth_factor", KeyKind.Number, null, "depth of a high tailwater over the expected one") { Least = 1, Most = 10 },
     ];
 
     /// <summary>Keys that are planned and not computed yet: saying so beats taking them for a slip of the pen.</summary>
     public static readonly IReadOnlyDictionary<string, string> NotYet = new Dictionary<string, string>(StringComparer.Ordinal)
     {
         ["[rainfall] rasters"] = "rainfall rasters are not read yet; give a table",
-        ["[tailwater] rating"] = "tailwater ratings are not read yet; use normal-depth or fixed",
     };
 
     /// <summary>The key with a table and a name, or null.</summary>

@@ -219,7 +219,7 @@ internal sealed partial class StudyLoader
 
     private StudySettings Settings(FlowSettings flow, CulvertCatalogue catalogue)
     {
-        var (criteria, tailwater) = (_project["criteria"], _project["tailwater"]);
+        var criteria = _project["criteria"];
         return new StudySettings
         {
             SmoothOutlines = _project["study"].Text("outlines") == "smooth",
@@ -256,14 +256,7 @@ internal sealed partial class StudyLoader
                 LargestOutletVelocityMPerS = criteria.Number("largest_outlet_velocity"),
                 LargestOvertoppingDepthM = criteria.Number("largest_overtopping_depth"),
             },
-            Tailwater = new TailwaterSettings
-            {
-                FixedElevationM = tailwater.Text("method") == "fixed" ? tailwater.Number("elevation") : null,
-                BottomWidthM = tailwater.Number("bottom_width"),
-                SideSlope = tailwater.Needed("side_slope"),
-                RoughnessN = tailwater.Needed("roughness"),
-                SlopeMPerM = tailwater.Number("slope"),
-            },
+            Tailwater = _tailwater!,
         };
     }
 }

@@ -31,6 +31,7 @@ internal sealed partial class StudyLoader
     private readonly string _shownName;
     private UnitPrices? _prices;
     private string _terrainDatum = "";
+    private TailwaterSettings? _tailwater;
 
     private StudyLoader(ProjectFile project, string shownName) => (_project, _shownName, _problems) = (project, shownName, [.. project.Problems]);
 
@@ -75,6 +76,7 @@ internal sealed partial class StudyLoader
         var flow = Flow();
         var catalogue = Catalogue();
         _prices = Prices();
+        _tailwater = Tailwater();
         var overrides = Try(() => TextFile("crossings", "overrides", "overrides") is { } t ? Overrides.Read(t.Name, t.Text) : Overrides.None) ?? Overrides.None;
         var covers = Try(() =>
         {

@@ -5,10 +5,10 @@ namespace GeoCulvert.Design.Hydraulics;
 /// <summary>A class of riprap with the apron that goes with it.</summary>
 /// <param name="Name">Class.</param>
 /// <param name="D50M">Median size, m.</param>
-/// <param name="LengthInDiameters">Length of the apron over the diameter.</param>
-/// <param name="ThicknessInD50">Thickness over the median size.</param>
+/// <param name="LengthRatio">Length of the apron over the diameter.</param>
+/// <param name="ThicknessRatio">Thickness over the median size.</param>
 /// <param name="Source">Where it comes from, with its status.</param>
-public sealed record RiprapClass(string Name, double D50M, double LengthInDiameters, double ThicknessInD50, Source Source)
+public sealed record RiprapClass(string Name, double D50M, double LengthRatio, double ThicknessRatio, Source Source)
 {
     /// <summary>The classes shipped, smallest first.</summary>
     public static IReadOnlyList<RiprapClass> Published { get; } = From(PublishedTable.Embedded("Hydraulics/Tables/riprap_classes.csv"));
@@ -113,16 +113,16 @@ public sealed record RiprapApron(
             return new(d50, D, TW, null, null, null, null, null, steps, findings);
         }
 
-        var length = rock.LengthInDiameters * full;
+        var length = rock.LengthRatio * full;
         var outlet = (3 * full) + (1.5 * b.Section.SpanM * (b.Count - 1));
         var end = outlet + (2 * length / 3);
-        var thickness = rock.ThicknessInD50 * rock.D50M;
+        var thickness = rock.ThicknessRatio * rock.D50M;
         var source = rock.Source.ToString();
         steps.Add(new("apron_d50_m", rock.D50M, "m", $"class {rock.Name}, the smallest that is large enough", source));
-        steps.Add(new("apron_length_m", length, "m", $"{rock.LengthInDiameters} x {full:0.000}", source));
+        steps.Add(new("apron_length_m", length, "m", $"{rock.LengthRatio} x {full:0.000}", source));
         steps.Add(new("apron_width_outlet_m", outlet, "m", $"3 x {full:0.000}" + (b.Count > 1 ? $" + {b.Count - 1} x 1.5 x {b.Section.SpanM:0.000}" : ""), $"{Handbook}, fig. 10.4 (MEMORY)"));
         steps.Add(new("apron_width_end_m", end, "m", $"{outlet:0.000} + 2/3 x {length:0.000}", $"{Handbook}, fig. 10.4 (MEMORY)"));
-        steps.Add(new("apron_thickness_m", thickness, "m", $"{rock.ThicknessInD50} x {rock.D50M:0.000}", source));
+        steps.Add(new("apron_thickness_m", thickness, "m", $"{rock.ThicknessRatio} x {rock.D50M:0.000}", source));
         return new(d50, D, TW, rock, length, outlet, end, thickness, steps, findings);
     }
 }

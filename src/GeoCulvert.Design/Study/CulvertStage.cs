@@ -29,7 +29,8 @@ public static class CulvertStage
 
     /// <summary>Sizes the culvert of one crossing.</summary>
     public static CulvertStageResult Size(
-        Crossing crossing, Watershed watershed, FlowResult flow, RoadClass? roadClass, DrainedTerrain terrain, Grid<float> filledDepth, StudyInputs inputs, StudySettings settings)
+        Crossing crossing, Watershed watershed, FlowResult flow, RoadClass? roadClass, DrainedTerrain terrain, Grid<float> filledDepth, StudyInputs inputs, StudySettings settings,
+        DownstreamPool? pool = null)
     {
         ArgumentNullException.ThrowIfNull(crossing);
         ArgumentNullException.ThrowIfNull(watershed);
@@ -77,9 +78,12 @@ public static class CulvertStage
             HighestHeadwaterElevationM = Given("highest_headwater_elevation") ?? settings.Criteria.HighestHeadwaterElevationM,
             SmallestRiseM = Given("smallest_rise") ?? settings.SmallestRiseM ?? roadClass?.SmallestRiseM ?? 0,
         };
+        var (designFlow, checkFlow) = (flow.Design.FlowM3PerS!.Value, flow.Check.FlowM3PerS!.Value);
+        ITailwater Tailwater(CulvertLine at, List<Finding> doubts) => TailwaterStage.WithPool(
+            TailwaterStage.For(crossing, at, terrain, watershed.Total.AreaM2, Math.Max(designFlow, checkFlow), settings.Tailwater, Given("tailwater_elevation"), doubts),
+            pool, at.OutletElevation!.Value, designFlow, checkFlow, doubts);
         SizingRequest Ask(CulvertLine at, RoadCrest? road, List<Finding> doubts) => new(
-            settings.Catalogue, criteria, flow.Design.FlowM3PerS!.Value, flow.Check.FlowM3PerS!.Value, at.Length!.Value, at.InletElevation!.Value, at.OutletElevation!.Value,
-            TailwaterStage.For(crossing, terrain, watershed.Total.AreaM2, at.OutletElevation.Value, settings.Tailwater, Given("tailwater_elevation"), doubts), road) { Prices = settings.Prices };
+            settings.Catalogue, criteria, designFlow, checkFlow, at.Length!.Value, at.InletElevation!.Value, at.OutletElevation!.Value, Tailwater(at, doubts), road) { Prices = settings.Prices };
 
         if (existing is not null) return Existing(existing, Ask(line, Crest(crossing, line), findings), line, flow, findings);
         var assumed = false;
@@ -110,6 +114,8 @@ public static class CulvertStage
         findings.AddRange(chosen.Design.Findings.Concat(chosen.Check.Findings).DistinctBy(f => f.Code));
         if (chosen.Design.OutletVelocityMPerS > HighVelocityMPerS)
             findings.Add(StudyFindings.OutletVelocityHigh.With($"{chosen.Design.OutletVelocityMPerS:0.0} m/s", chosen.Design.OutletVelocityMPerS, HighVelocityMPerS));
+        if (chosen.Design.OutletVelocityMPerS > HighVelocityMPerS && RiprapApron.For(chosen.Design) is { } apron) findings.AddRange(apron.Findings);
+        findings.AddRange(Bounds(chosen.Design, settings.Tailwater));
         return new CulvertStageResult(CrossingStatus.Sized, line, request, outcome, findings, assumed);
     }
 
@@ -136,6 +142,21 @@ public static class CulvertStage
         var frame = terrain.Elevation.Frame;
         return Math.Max(frame.CellWidthM, frame.CellHeightM) > crossing.Road!.WidthM
             || !(line.LowestRoadElevation?.Value - line.InletElevation?.Value >= criteria.SmallestRiseM + criteria.SmallestCoverM);
+    }
+
+    /// <summary>Headwater with the high and outlet velocity with the low tailwater, where both are asked for.</summary>
+    private static IEnumerable<Finding> Bounds(CulvertRating design, TailwaterSettings settings)
+    {
+        if (settings is not { LowDepthFactor: { } low, HighDepthFactor: { } high }) return [];
+        var (site, bed) = (design.Site, design.Site.Barrels.OutletElevationM);
+        var bounds = TailwaterBounds.Rate(site, new ScaledTailwater(site.Tailwater, bed, low), new ScaledTailwater(site.Tailwater, bed, high), design.FlowM3PerS);
+        return
+        [
+            StudyFindings.TailwaterBounded.With(
+                $"headwater {bounds.Low.HeadwaterElevationM:0.00} to {bounds.High.HeadwaterElevationM:0.00} m, outlet velocity {bounds.High.OutletVelocityMPerS:0.0} to {bounds.Low.OutletVelocityMPerS:0.0} m/s with {low:0.##} and {high:0.##} times the tailwater depth",
+                bounds.High.HeadwaterElevationM, bounds.Low.HeadwaterElevationM),
+            .. bounds.Findings,
+        ];
     }
 
     private static double LeastRoadLevelM(SizingOption option, SizingCriteria criteria)

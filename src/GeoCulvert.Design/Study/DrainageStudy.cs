@@ -61,8 +61,11 @@ public static class DrainageStudy
         var catchments = new CatchmentStage(inputs, settings, terrain, watersheds);
         var filledDepth = FilledDepth(terrain);
         var idOfOutlet = watersheds.Watersheds.Zip(crossings).GroupBy(p => p.First.Outlet).ToDictionary(g => g.Key, g => g.First().Second.Id);
-        var results = new List<CrossingResult>(crossings.Count);
-        for (var i = 0; i < crossings.Count; i++)
+        var results = new CrossingResult[crossings.Count];
+        var pools = new Dictionary<int, DownstreamPool?>();
+        var done = 0;
+        // Downstream crossings first, so that their pools are known; a crossing downstream always drains more.
+        foreach (var i in Enumerable.Range(0, crossings.Count).OrderByDescending(k => watersheds.Watersheds[k].Total.AreaM2))
         {
             cancel.ThrowIfCancellationRequested();
             var (crossing, watershed) = (crossings[i], watersheds.Watersheds[i]);
@@ -77,16 +80,17 @@ public static class DrainageStudy
                 .Compute(catchment, settings.Flow, design, check, Given("time_of_concentration") / 60)
                 .WithGiven(Given("design_flow"), Given("check_flow"), inputs.Overrides.Origin);
             doubts.AddRange(flow.Findings);
-            var culvert = CulvertStage.Size(crossing, watershed, flow, road?.Class, terrain, filledDepth, inputs, settings);
+            var culvert = CulvertStage.Size(crossing, watershed, flow, road?.Class, terrain, filledDepth, inputs, settings, pools.GetValueOrDefault(watershed.ParentOutlet));
             doubts.AddRange(culvert.Findings);
+            pools[watershed.Outlet] = DownstreamPool.Of(crossing.Id, culvert);
 
             var downstream = idOfOutlet.GetValueOrDefault(watershed.ParentOutlet);
             var findings = doubts.Select(f => f.At(crossing.Id)).DistinctBy(f => (f.Code, f.Text)).OrderByDescending(f => f.Severity).ToList();
-            results.Add(CrossingAssembly.Build(crossing, watershed, catchments.Land(watershed), flow, culvert, downstream, findings, settings.Units));
-            progress.Report((i + 1.0) / crossings.Count);
+            results[i] = CrossingAssembly.Build(crossing, watershed, catchments.Land(watershed), flow, culvert, downstream, findings, settings.Units);
+            progress.Report(++done / (double)crossings.Count);
         }
 
-        return results;
+        return [.. results];
     }
 
     private static List<Finding> RunFindings(StudyInputs inputs, IReadOnlyList<Crossing> crossings)

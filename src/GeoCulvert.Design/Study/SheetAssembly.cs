@@ -116,10 +116,14 @@ internal static class SheetAssembly
         foreach (var time in flow.Time?.All ?? []) yield return new SheetCalculation($"Time of concentration, {time.Method}", time.Steps);
         foreach (var peak in flow.Design.All) yield return new SheetCalculation($"Flow, {peak.Method}, {peak.ReturnPeriodYr:0.##} yr", peak.Steps);
         if (chosen is null) yield break;
-        if (culvert.Request!.Tailwater is NormalDepthTailwater channel)
-            yield return new SheetCalculation("Tailwater at the design flood", channel.Steps(chosen.Design.FlowM3PerS));
+        var tailwater = culvert.Request!.Tailwater;
+        if (tailwater.Steps(chosen.Design.FlowM3PerS) is { Count: > 0 } level) yield return new SheetCalculation("Tailwater at the design flood", level);
         yield return new SheetCalculation("Culvert at the design flood", RatingSteps.Of(chosen.Design));
         yield return new SheetCalculation("Culvert at the check flood", RatingSteps.Of(chosen.Check));
+        if (OutletConditions.Of(chosen.Design, tailwater.VelocityMPerS(chosen.Design.FlowM3PerS)) is not { } outlet) yield break;
+        yield return new SheetCalculation("Outlet at the design flood", outlet.Steps);
+        if (outlet.VelocityMPerS > CulvertStage.HighVelocityMPerS && RiprapApron.For(chosen.Design) is { } apron)
+            yield return new SheetCalculation("Riprap apron at the design flood", apron.Steps);
     }
 
     private static SheetFact Fact(string label, double? value, QuantityKind kind, string origin) =>

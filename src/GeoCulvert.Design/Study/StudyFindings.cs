@@ -36,6 +36,28 @@ public static class StudyFindings
         "tailwater-channel-assumed", Severity.Warning, "The channel below the outlet was assumed from the drainage area.",
         "Give its width, side slope and roughness from survey, or a tailwater level.");
 
+    /// <summary>No cross-section in the terrain.</summary>
+    public static readonly FindingCode TailwaterNoSection = new(
+        "tailwater-no-section", Severity.Warning, "The terrain model shows no usable cross-section below the outlet; normal depth in a trapezoid channel took its place.",
+        "Give the channel from survey, a rating or a level; or a finer terrain model.");
+
+    /// <summary>Cross-section overflows.</summary>
+    public static readonly FindingCode TailwaterSectionLow = new(
+        "tailwater-section-overflows", Severity.Note, "The largest flow stands above the lower end of the cross-section; the ground beyond was taken as a wall, which is on the high side.",
+        "Look at the section; give the tailwater if the water spreads there.");
+
+    /// <summary>Rating too short.</summary>
+    public static readonly FindingCode TailwaterRatingExceeded = new(
+        "tailwater-rating-exceeded", Severity.Warning, "The flow is beyond the tailwater rating; its last level was held, which may be too low.", "Extend the rating.");
+
+    /// <summary>Pool downstream.</summary>
+    public static readonly FindingCode TailwaterFromPool = new(
+        "tailwater-from-pool", Severity.Note, "The pool of the crossing next downstream sets the tailwater.", "Lower that pool if this headwater is too high.");
+
+    /// <summary>Headwater with bounds.</summary>
+    public static readonly FindingCode TailwaterBounded = new(
+        "tailwater-bounds", Severity.Note, "Headwater and outlet velocity were also computed with a low and a high tailwater.", "Hold the high headwater against the road level and the high velocity against the channel.");
+
     /// <summary>Bed slope at its floor.</summary>
     public static readonly FindingCode TailwaterSlopeFloor = new(
         "tailwater-slope-floor", Severity.Warning, "The terrain below the outlet hardly falls; a least bed slope was used for the tailwater.",

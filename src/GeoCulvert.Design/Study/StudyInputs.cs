@@ -65,25 +65,6 @@ public sealed record StudyInputs
     public Overrides Overrides { get; init; } = Overrides.None;
 }
 
-/// <summary>How the water level at the outlet is found; SI.</summary>
-public sealed record TailwaterSettings
-{
-    /// <summary>Fixed elevation, m; null for normal depth.</summary>
-    public double? FixedElevationM { get; init; }
-
-    /// <summary>Channel bottom width, m; null to take it from the drainage area, with a finding.</summary>
-    public double? BottomWidthM { get; init; }
-
-    /// <summary>Side slope, horizontal per one vertical.</summary>
-    public double SideSlope { get; init; } = 2;
-
-    /// <summary>Manning's n of the channel.</summary>
-    public double RoughnessN { get; init; } = 0.04;
-
-    /// <summary>Bed slope; null to take it from the terrain below the outlet.</summary>
-    public double? SlopeMPerM { get; init; }
-}
-
 /// <summary>Settings of a study; SI.</summary>
 public sealed record StudySettings
 {

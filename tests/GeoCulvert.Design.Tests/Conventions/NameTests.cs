@@ -10,7 +10,7 @@ public partial class NameTests
     private static readonly string[] UnitEndings =
     [
         "M", "M2", "M3", "Mm", "MPerM", "MPerS", "M3PerS", "MmPerH", "PerM3PerS", "S", "Min", "Minutes", "Hours", "Yr", "Years", "Deg", "Share", "Km2", "Ratio",
-        "Factor", "Coefficient", "Number", "Count", "Pct", "MPerS2", "N",
+        "Factor", "Coefficient", "Number", "Count", "Pct", "MPerS2", "N", "Pa",
     ];
 
     public static IEnumerable<FindingCode> Codes() => typeof(Finding).Assembly.GetExportedTypes()
