@@ -29,6 +29,8 @@ public static class RatingSteps
         steps.AddRange(InletSteps(rating, Q, D, A, S));
         steps.AddRange(OutletSteps(rating, Q));
         steps.Add(new Step("headwater_m", rating.HeadwaterM, "m", $"the higher of {rating.InletControlHeadwaterM:0.000} (inlet) and {rating.OutletControlHeadwaterM:0.000} (outlet): {rating.Control} control"));
+        if (rating.IsBetweenFreeAndFull)
+            steps.Add(new Step("own_headwater_m", rating.OwnHeadwaterM, "m", "the barrels pass from free to full flow: at this flow they stand anywhere from here to the headwater above, which the road sets"));
         steps.Add(new Step("headwater_elevation_m", rating.HeadwaterElevationM, "m", $"{b.InletElevationM:0.000} + {rating.HeadwaterM:0.000}"));
         if (rating.RoadFlowM3PerS > 0)
             steps.Add(new Step("road_flow_m3_s", rating.RoadFlowM3PerS, "m3/s", $"sum of kt Cr L HWr^1.5 over strips of the road, lowest level {rating.Site.Road!.LowestM:0.000} m", RoadOvertopping.Source.ToString()));

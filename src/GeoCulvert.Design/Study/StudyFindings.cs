@@ -38,7 +38,7 @@ public static class StudyFindings
 
     /// <summary>No cross-section in the terrain.</summary>
     public static readonly FindingCode TailwaterNoSection = new(
-        "tailwater-no-section", Severity.Warning, "The terrain model shows no usable cross-section below the outlet; normal depth in a trapezoid channel took its place.",
+        "tailwater-no-section", Severity.Note, "The terrain model shows no usable cross-section below the outlet; normal depth in a trapezoid channel took its place.",
         "Give the channel from survey, a rating or a level; or a finer terrain model.");
 
     /// <summary>Cross-section overflows.</summary>

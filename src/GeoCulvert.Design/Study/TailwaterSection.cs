@@ -26,7 +26,8 @@ internal static class TailwaterSection
     /// <param name="elevation">Untouched terrain.</param>
     /// <param name="widthM">Width of the channel, m.</param>
     /// <param name="settings">Settings.</param>
-    public static TailwaterSectionCut Cut(IReadOnlyList<int> path, double outletM, Grid<float> elevation, double widthM, TailwaterSettings settings)
+    /// <param name="wider">Factor on the reach of the section to each side.</param>
+    public static TailwaterSectionCut Cut(IReadOnlyList<int> path, double outletM, Grid<float> elevation, double widthM, TailwaterSettings settings, int wider = 1)
     {
         var frame = elevation.Frame;
         var cell = Math.Max(frame.CellWidthM, frame.CellHeightM);
@@ -40,7 +41,7 @@ internal static class TailwaterSection
         if (length < reach) return None("the stream turns back on itself there");
         // Across the stream, left to right looking downstream.
         double dx = (below.Y - above.Y) / length, dy = -(below.X - above.X) / length;
-        var half = Math.Max(LeastHalfWidthM, Math.Max(HalfWidthCells * cell, HalfWidthChannels * widthM));
+        var half = wider * Math.Max(LeastHalfWidthM, Math.Max(HalfWidthCells * cell, HalfWidthChannels * widthM));
         var step = Math.Min(frame.CellWidthM, frame.CellHeightM);
         double Ground(int k) => RoadProfile.Bilinear(elevation, centre.X + (k * step * dx), centre.Y + (k * step * dy));
 

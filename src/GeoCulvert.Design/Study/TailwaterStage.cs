@@ -14,6 +14,9 @@ public static class TailwaterStage
     /// <summary>Least bed slope, m/m (own rule).</summary>
     public const double LeastSlopeMPerM = 0.0005;
 
+    // How much wider than the first a cross-section may be cut where it does not hold the flow.
+    private static readonly int[] Widths = [1, 2, 4];
+
     /// <summary>
     /// Channel width assumed from the drainage area: bankfull width = 2.70 A^0.352, A in km2, width in m (Bieger and others 2015, United States as a
     /// whole). From memory, which the finding says.
@@ -56,11 +59,11 @@ public static class TailwaterStage
 
         if (settings.Method == TailwaterMethod.ChannelFromDem)
         {
-            var cut = Cut(crossing, line, terrain, width, settings);
+            var cut = Cut(crossing, line, terrain, width, slope, largestFlowM3PerS, settings);
             if (cut.Section is { } section)
             {
                 var channel = new CrossSectionTailwater(section, slope, cut.DistanceM);
-                if (largestFlowM3PerS > 0 && channel.LevelAtSectionM(largestFlowM3PerS) is var top && top > section.LowerEndM)
+                if (channel.LevelAtSectionM(largestFlowM3PerS) is var top && top > section.LowerEndM)
                     findings.Add(StudyFindings.TailwaterSectionLow.With($"level {top:0.00} m at {largestFlowM3PerS:G4} m3/s, lower end {section.LowerEndM:0.00} m", top, section.LowerEndM));
                 return channel;
             }
@@ -98,7 +101,8 @@ public static class TailwaterStage
         return raised;
     }
 
-    private static TailwaterSectionCut Cut(Crossing crossing, CulvertLine line, DrainedTerrain terrain, double widthM, TailwaterSettings settings)
+    private static TailwaterSectionCut Cut(
+        Crossing crossing, CulvertLine line, DrainedTerrain terrain, double widthM, double slopeMPerM, double largestFlowM3PerS, TailwaterSettings settings)
     {
         var frame = terrain.Elevation.Frame;
         var cell = Math.Max(frame.CellWidthM, frame.CellHeightM);
@@ -117,7 +121,17 @@ public static class TailwaterStage
             }
         }
 
-        return TailwaterSection.Cut(path, outlet, terrain.Elevation, widthM, settings);
+        // Wider until it holds the largest flow: on a plain the first rise may be a mere hump.
+        TailwaterSectionCut? best = null;
+        foreach (var wider in Widths)
+        {
+            var cut = TailwaterSection.Cut(path, outlet, terrain.Elevation, widthM, settings, wider);
+            if (cut.Section is not { } section) continue;
+            best = cut;
+            if (new CrossSectionTailwater(section, slopeMPerM, cut.DistanceM).LevelAtSectionM(largestFlowM3PerS) <= section.LowerEndM) break;
+        }
+
+        return best ?? TailwaterSection.Cut(path, outlet, terrain.Elevation, widthM, settings);
     }
 
     /// <summary>Fall of the untouched bed below the road by the length of stream: lowest ground in the first and last fifth of the reach.</summary>

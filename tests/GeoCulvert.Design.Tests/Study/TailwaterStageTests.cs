@@ -13,20 +13,23 @@ public class TailwaterStageTests
     private const double Slope = 0.01;
 
     // Bed 100 + 0.01 y along the middle column, a V of 1 in 2 on both sides; a road across at y = 300.
-    private static (Crossing Crossing, CulvertLine Line, DrainedTerrain Terrain) Valley(double cell = 1, double sideSlope = 0.5)
+    private static (Crossing Crossing, CulvertLine Line, DrainedTerrain Terrain) Valley(double cell = 1, double sideSlope = 0.5, double flatFromM = 1000, double flatToM = 1000, double widthM = 81)
     {
-        int columns = (int)(81 / cell) | 1, rows = (int)(600 / cell);
+        int columns = (int)(widthM / cell) | 1, rows = (int)(600 / cell);
         var frame = new GridFrame(columns, rows, 0, rows * cell, cell, cell);
         var elevation = new Grid<float>(frame);
         var middle = frame.CentreX(columns / 2);
         for (var row = 0; row < rows; row++)
             for (var column = 0; column < columns; column++)
-                elevation[row, column] = (float)(100 + (Slope * frame.CentreY(row)) + (sideSlope * Math.Abs(frame.CentreX(column) - middle)));
+                elevation[row, column] = (float)(100 + (Slope * frame.CentreY(row)) + (sideSlope * Away(Math.Abs(frame.CentreX(column) - middle))));
         var terrain = Drainage.Solve(elevation);
         var road = new RoadAlignment("R", [new LineString([new CoordinateZ(frame.West, 300, 106), new CoordinateZ(frame.East, 300, 106)])]) { WidthM = 8, SideSlope = 2 };
         var crossing = CrossingFinder.Find([road], terrain.Direction, terrain.Accumulation, (long)(5000 / (cell * cell))).Crossings.OrderByDescending(c => c.AccumulationCells).First();
         var line = CulvertLineSurvey.Measure(crossing, terrain.Direction, terrain.Accumulation, terrain.Elevation);
         return (crossing, line, terrain);
+
+        // Level ground between two distances from the stream.
+        double Away(double x) => Math.Min(x, flatFromM) + Math.Max(0, x - flatToM);
     }
 
     private static ITailwater For(TailwaterSettings settings, List<Finding> findings, double cell = 1, double sideSlope = 0.5, double? given = null, double flow = 5)
@@ -66,6 +69,18 @@ public class TailwaterStageTests
         var findings = new List<Finding>();
         Assert.IsType<NormalDepthTailwater>(For(new() { BottomWidthM = 4 }, findings, sideSlope: 0.005));
         Assert.Contains(findings, f => f.Code == "tailwater-no-section" && f.Text.Contains("no banks", StringComparison.Ordinal));
+    }
+
+    [Fact]
+    public void ASectionIsCutWiderUntilItHoldsTheFlow()
+    {
+        // Banks 1 m high, then a plain to 45 m on each side and slopes of 1 in 2 beyond: 60 m3/s stands above the banks.
+        var findings = new List<Finding>();
+        var (crossing, line, terrain) = Valley(1, 0.5, 2, 45, 161);
+        var tailwater = Assert.IsType<CrossSectionTailwater>(TailwaterStage.For(crossing, line, terrain, 4e5, 60, new() { BottomWidthM = 4 }, null, findings));
+        Assert.Empty(findings);
+        Assert.True(tailwater.Section.Points[^1].StationM - tailwater.Section.Points[0].StationM > 100);
+        Assert.InRange(tailwater.LevelAtSectionM(60), tailwater.Section.BedM + 1, tailwater.Section.LowerEndM);
     }
 
     [Fact]
