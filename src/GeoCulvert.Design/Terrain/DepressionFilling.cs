@@ -18,8 +18,8 @@ public sealed record FilledSurface(Grid<float> Surface, long RaisedCells, double
 /// </remarks>
 public static class DepressionFilling
 {
-    /// <summary>Basins for each 100 cells above which the plain flood is used.</summary>
-    private const int MostBasinsPct = 4;
+    /// <summary>Cells in pools for each 100 cells above which the plain flood is used.</summary>
+    private const int MostInsidePct = 30;
 
     /// <summary>Fills a grid; the input is not changed.</summary>
     public static FilledSurface Fill(Grid<float> elevation, CancellationToken cancel = default)
@@ -33,20 +33,19 @@ public static class DepressionFilling
     /// <param name="cancel">Stops the work.</param>
     internal static FilledSurface Fill(Grid<float> elevation, int[] scratch, CancellationToken cancel)
     {
-        var most = Math.Max(1000, elevation.Cells.LongLength * MostBasinsPct / 100);
-        var basins = PitBasins.Label(elevation, scratch, most, cancel);
-        Grid<float> surface;
-        if (basins > most)
+        var code = new byte[elevation.Cells.Length];
+        SteepestDescent.Compute(elevation, code, 0, elevation.Frame.Rows);
+        var pools = new PitPools(elevation, code, scratch, 0, elevation.Frame.Rows);
+        if (!pools.Grow(elevation.Cells.LongLength / 100 * MostInsidePct + 64, cancel))
         {
-            surface = PriorityFlood.Fill(elevation, cancel);
-        }
-        else
-        {
-            var level = basins == 0 ? [float.NegativeInfinity] : SpillLevels.Solve(elevation, scratch, basins, cancel);
-            surface = new Grid<float>(elevation.Frame, GC.AllocateUninitializedArray<float>(elevation.Cells.Length));
-            Raise(elevation.Cells, scratch, level, surface.Cells);
+            Array.Clear(scratch);
+            return Measure(elevation, PriorityFlood.Fill(elevation, cancel));
         }
 
+        var surface = new Grid<float>(elevation.Frame, GC.AllocateUninitializedArray<float>(elevation.Cells.Length));
+        var level = pools.Levels();
+        for (var i = 0; i < scratch.Length; i++) scratch[i] = (scratch[i] & 3) == PitPools.Inside ? scratch[i] >> 2 : 0;
+        Raise(elevation.Cells, scratch, level, surface.Cells);
         Array.Clear(scratch);
         return Measure(elevation, surface);
     }

@@ -13,36 +13,14 @@ public static class FlowAccumulation
         return Count(direction, elevation, new int[direction.Cells.Length]);
     }
 
-    /// <param name="direction">Directions without circles.</param>
-    /// <param name="elevation">Grid that tells nodata (NaN) from outlets; nodata gets 0.</param>
-    /// <param name="counts">Receives the counts and becomes the grid.</param>
     internal static Grid<int> Count(Grid<byte> direction, Grid<float> elevation, int[] counts)
     {
-        Span<int> step = stackalloc int[16];
-        Steps(direction.Frame, step);
-        var d = direction.Cells;
+        var code = (byte[])direction.Cells.Clone();
+        AccumulationWalk.TallyInflows(code, direction.Frame, 0, direction.Frame.Rows);
         var z = elevation.Cells;
-        var inflows = new byte[d.Length];
-        for (var i = 0; i < d.Length; i++)
-        {
-            counts[i] = float.IsNaN(z[i]) ? 0 : 1;
-            if (d[i] != 0) inflows[i + step[d[i] & 15]]++;
-        }
-
-        for (var i = 0; i < d.Length; i++)
-        {
-            // 0 becomes 255 when the walk leaves a cell, so no cell is left twice.
-            var cell = i;
-            while (inflows[cell] == 0 && d[cell] != 0)
-            {
-                inflows[cell] = byte.MaxValue;
-                var next = cell + step[d[cell] & 15];
-                counts[next] += counts[cell];
-                inflows[next]--;
-                cell = next;
-            }
-        }
-
+        for (var i = 0; i < counts.Length; i++) counts[i] = float.IsNaN(z[i]) ? 0 : 1;
+        AccumulationWalk.Run(code, counts, direction.Frame, 0, direction.Frame.Rows);
+        if (!AccumulationWalk.Strip(code)) throw new InvalidOperationException("The flow directions hold a circle.");
         return new Grid<int>(direction.Frame, counts);
     }
 

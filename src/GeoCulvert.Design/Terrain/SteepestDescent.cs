@@ -14,20 +14,26 @@ internal static class SteepestDescent
     /// <summary>Set beside the code of cells that touch the edge of the grid or nodata.</summary>
     public const byte Rim = 16;
 
-    /// <summary>Code of every cell, with <see cref="Rim"/> where it touches an edge; 0 for nodata. Returns the inner cells with nothing lower.</summary>
-    public static List<int> Compute(Grid<float> surface, byte[] code)
+    /// <summary>An inner cell with nothing lower; alone until something gives it a direction.</summary>
+    public const byte Flat = 32;
+
+    /// <summary>
+    /// Code of every cell of some rows: <see cref="Rim"/> beside it where the cell touches the edge of the grid or nodata or is a sink (minus
+    /// infinity), <see cref="Flat"/> for other cells with nothing lower, 0 for nodata.
+    /// </summary>
+    public static void Compute(Grid<float> surface, byte[] code, int fromRow, int toRow)
     {
         var frame = surface.Frame;
         int columns = frame.Columns, rows = frame.Rows;
         ReadOnlySpan<float> z = surface.Cells;
-        var flat = new List<int>();
         double height = frame.CellHeightM, width = frame.CellWidthM, diagonal = D8.StepLengthM(frame, 2);
-        bool gapAbove = false, gapHere = HasGap(z[..Math.Min(columns, z.Length)]);
-        for (var r = 0; r < rows; r++)
+        bool specialAbove = fromRow > 0 && HasSpecial(z.Slice((fromRow - 1) * columns, columns));
+        bool specialHere = fromRow < toRow && HasSpecial(z.Slice(fromRow * columns, columns));
+        for (var r = fromRow; r < toRow; r++)
         {
             var here = z.Slice(r * columns, columns);
             var codes = code.AsSpan(r * columns, columns);
-            var gapBelow = r + 1 < rows && HasGap(z.Slice((r + 1) * columns, columns));
+            var specialBelow = r + 1 < rows && HasSpecial(z.Slice((r + 1) * columns, columns));
             if (r == 0 || r == rows - 1 || columns < 3)
             {
                 for (var c = 0; c < columns; c++) codes[c] = AtRim(surface, r, c);
@@ -37,20 +43,11 @@ internal static class SteepestDescent
                 codes[0] = AtRim(surface, r, 0);
                 codes[^1] = AtRim(surface, r, columns - 1);
                 Row(z.Slice((r - 1) * columns, columns), here, z.Slice((r + 1) * columns, columns), codes, height, width, diagonal);
-                if (gapAbove || gapHere || gapBelow) MarkRims(surface, r, codes);
-                for (var c = 1; c < columns - 1; c++)
-                {
-                    var ahead = codes[c..^1].IndexOf((byte)0);
-                    if (ahead < 0) break;
-                    c += ahead;
-                    if (!float.IsNaN(here[c])) flat.Add((r * columns) + c);
-                }
+                if (specialAbove || specialHere || specialBelow) MarkSpecial(surface, r, codes);
             }
 
-            (gapAbove, gapHere) = (gapHere, gapBelow);
+            (specialAbove, specialHere) = (specialHere, specialBelow);
         }
-
-        return flat;
     }
 
     /// <summary>Code of one cell anywhere in the grid, without the rim mark.</summary>
@@ -73,19 +70,32 @@ internal static class SteepestDescent
     private static byte AtRim(Grid<float> surface, int row, int column) =>
         float.IsNaN(surface[row, column]) ? (byte)0 : (byte)(At(surface, row, column) | Rim);
 
-    private static void MarkRims(Grid<float> surface, int row, Span<byte> codes)
+    private static void MarkSpecial(Grid<float> surface, int row, Span<byte> codes)
     {
         for (var c = 1; c < codes.Length - 1; c++)
         {
-            if (!float.IsNaN(surface[row, c]) && EdgeCells.IsEdge(surface, row, c)) codes[c] |= Rim;
+            var z = surface[row, c];
+            if (float.IsNaN(z)) codes[c] = 0;
+            else if (float.IsNegativeInfinity(z) || EdgeCells.IsEdge(surface, row, c)) codes[c] = (byte)((codes[c] & 15) | Rim);
         }
     }
 
-    private static bool HasGap(ReadOnlySpan<float> row)
+    /// <summary>Whether a row holds nodata or a sink.</summary>
+    private static bool HasSpecial(ReadOnlySpan<float> row)
     {
-        foreach (var z in row)
+        var c = 0;
+        if (Vector256.IsHardwareAccelerated)
         {
-            if (float.IsNaN(z)) return true;
+            var all = Vector256<float>.AllBitsSet;
+            var sink = Vector256.Create(float.NegativeInfinity);
+            for (; c + Vector256<float>.Count <= row.Length; c += Vector256<float>.Count)
+                all &= Vector256.GreaterThan(At(row, c), sink);
+            if (all.AsInt32() != Vector256<int>.AllBitsSet) return true;
+        }
+
+        for (; c < row.Length; c++)
+        {
+            if (!(row[c] > float.NegativeInfinity)) return true;
         }
 
         return false;
@@ -105,6 +115,7 @@ internal static class SteepestDescent
                 var chosen = Choose(
                     At(here, c), At(above, c), At(above, c + 1), At(here, c + 1), At(below, c + 1), At(below, c), At(below, c - 1), At(here, c - 1), At(above, c - 1),
                     Vector256.Create(height), Vector256.Create(width), Vector256.Create(diagonal));
+                chosen = Vector256.ConditionalSelect(Vector256.Equals(chosen, Vector256<int>.Zero), Vector256.Create((int)Flat), chosen);
                 var narrow = Vector128.Narrow(chosen.GetLower(), chosen.GetUpper());
                 MemoryMarshal.Write(codes[c..], Vector128.Narrow(narrow, narrow).AsUInt64().ToScalar());
             }
@@ -112,8 +123,9 @@ internal static class SteepestDescent
 
         for (; c < here.Length - 1; c++)
         {
-            codes[c] = Choose(
+            var chosen = Choose(
                 here[c], above[c], above[c + 1], here[c + 1], below[c + 1], below[c], below[c - 1], here[c - 1], above[c - 1], height, width, diagonal);
+            codes[c] = chosen == 0 ? Flat : chosen;
         }
     }
 
