@@ -113,7 +113,7 @@ public class RatingInvariantTests
             var crest = new RoadCrest([(0, 12), (20, 10), (40, 10), (60, 12)], 9, RoadSurface.Paved);
             var flow = Math.Pow(10, exponent);
             var level = RoadOvertopping.LevelM(crest, flow, tailwater);
-            return level >= Math.Max(10, tailwater) && Math.Abs(RoadOvertopping.FlowM3PerS(crest, level, tailwater) - flow) < 1e-7 + (1e-3 * flow); // just above a drowning tailwater the flow changes within the last digits of the level
+            return level >= Math.Max(10, tailwater) && Math.Abs(RoadOvertopping.FlowM3PerS(crest, level, tailwater) - flow) < 1e-7 + (1e-5 * flow); // just above a drowning tailwater a trickle hangs on the last digits of the level
         },
         iter: 500);
 

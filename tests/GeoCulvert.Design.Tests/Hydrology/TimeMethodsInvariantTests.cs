@@ -39,13 +39,14 @@ public class TimeMethodsInvariantTests
     }
 
     [Fact]
-    public void TheIterationAgreesWithItself() => Gen.Select(Gen.Double[50, 3000], Gen.Double[0.002, 0.1], Gen.Double[2, 100]).Sample((length, slope, years) =>
+    public void TheIterationAgreesWithItself() => Gen.Select(Gen.Double[50, 3000], Gen.Double[0.002, 0.1], Gen.Double[2, 300]).Sample((length, slope, years) =>
     {
         var result = new PapadakisKazan(0.1).Compute(Even(length, slope), Context with { ReturnPeriodYr = years });
+        // A time shorter than the table allows is said so, and has no intensity of its own.
+        if (result.Findings.Any(f => f.Kind == TimeFindings.IterationEnd)) return true;
         var i = Table.Intensity(result.TimeMin!.Value, years).IntensityMmPerH!.Value;
-        return result.Findings.Any(f => f.Kind == TimeFindings.IterationEnd)
-            || Math.Abs(PapadakisKazan.TimeMin(length, 0.1, slope, i) / result.TimeMin.Value - 1) < 1e-5;
-    }, iter: 60);
+        return Math.Abs(PapadakisKazan.TimeMin(length, 0.1, slope, i) / result.TimeMin.Value - 1) < 1e-6;
+    }, iter: 300);
 
     [Fact]
     public void TimesShorterThanTheRainfallUseItsEndAndSaySo()
